@@ -1,0 +1,1 @@
+"""The LaTeX appendix: printed from certificates, computing nothing."""

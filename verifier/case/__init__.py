@@ -1,0 +1,1 @@
+"""Case files: text in, checked records out."""

@@ -1,0 +1,1 @@
+"""Exact numbers: nothing here returns a float."""

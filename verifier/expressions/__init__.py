@@ -1,0 +1,1 @@
+"""Expressions of a case: one tree, read from text that is never executed."""

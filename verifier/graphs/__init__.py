@@ -1,0 +1,1 @@
+"""Graph kinds, one a file."""

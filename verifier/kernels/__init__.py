@@ -1,0 +1,1 @@
+"""Fast exact kernels, each with a naive counterpart in the tests."""

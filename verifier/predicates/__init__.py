@@ -1,0 +1,1 @@
+"""Predicates, one a file."""

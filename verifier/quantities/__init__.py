@@ -1,0 +1,1 @@
+"""Quantities, one a file: exact value and witness."""

@@ -1,0 +1,1 @@
+"""Sequence rules, one published construction a file."""

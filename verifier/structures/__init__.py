@@ -1,0 +1,1 @@
+"""What an instance consists of: character, sequence, graph."""
