@@ -1,0 +1,1 @@
+"""One instance: built, measured, judged, certified."""

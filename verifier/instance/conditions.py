@@ -1,0 +1,92 @@
+"""What is decided about a combination before anything is measured."""
+
+from collections.abc import Iterator, Sequence
+
+from verifier.case.case import Case, Condition
+from verifier.case.combinations import Combination
+from verifier.errors import CaseError, OutsideError, UndefinedError, VerifierError
+from verifier.expressions.evaluate import judge, value
+from verifier.expressions.names import closed_parts
+from verifier.instance.build import polynomial_at
+from verifier.instance.parameters import ParameterScope
+from verifier.instance.scope import InstanceScope
+from verifier.structures.character import Character
+from verifier.structures.subject import Subject
+
+
+def kept(case: Case, combination: Combination) -> bool:
+    """Return whether a combination satisfies every condition of `where`.
+
+    A combination at which f has no meaning is kept: it will be reported as outside.
+
+    Raises
+    ------
+    CaseError
+        If a condition cannot be decided there.
+    """
+    if not case.where:
+        return True
+    try:
+        polynomial = polynomial_at(case, combination)
+    except OutsideError:
+        return True
+    character = None
+    if polynomial is not None and combination.p not in (None, 2):
+        character = Character(combination.p, polynomial)
+    scope = InstanceScope(combination, Subject(combination.p, polynomial, character, None, None))
+    return all(_true(condition, scope) for condition in case.where)
+
+
+def _true(condition: Condition, scope: InstanceScope) -> bool:
+    judged = judge(condition.expanded, scope)
+    if judged.verdict not in ("holds", "fails"):
+        raise CaseError(f"[parameters] where: {condition.text}: {judged.reason}")
+    return judged.verdict == "holds"
+
+
+def refuse_undefined(case: Case, combinations: Sequence[Combination]) -> None:
+    """Refuse a claim or table whose parts in parameters alone have no value somewhere.
+
+    Instances that a condition in parameters alone puts outside are not asked.
+
+    Raises
+    ------
+    CaseError
+        Naming the first such part and where it has no value.
+    """
+    for combination in combinations:
+        scope = ParameterScope(combination)
+        names = {*combination.numbers, *(("p", "q") if combination.p else ())}
+        for label, condition in _asked(case, scope, names):
+            for part in closed_parts(condition.expanded, frozenset(names)):
+                try:
+                    value(part, scope)
+                except UndefinedError as problem:
+                    where = ", ".join(f"{k} = {v}" for k, v in combination.texts.items())
+                    place = f" at {where}" if where else ""
+                    raise CaseError(f"{label}: {condition.text} is {problem}{place}") from problem
+                except CaseError as problem:
+                    raise CaseError(f"{label}: {condition.text}: {problem}") from problem
+                except VerifierError:
+                    continue
+
+
+def _asked(
+    case: Case, scope: ParameterScope, names: set[str]
+) -> Iterator[tuple[str, Condition]]:
+    for claim in case.claims:
+        if all(_may_hold(condition, scope, names) for condition in claim.given):
+            yield f"claim {claim.name}", claim.says
+            for condition in claim.given:
+                yield f"claim {claim.name}: given", condition
+    for table in case.tables:
+        for column in table.columns:
+            yield f"table {table.name}", column
+
+
+def _may_hold(condition: Condition, scope: ParameterScope, names: set[str]) -> bool:
+    """Return False where a condition in parameters alone is false."""
+    parts = closed_parts(condition.expanded, frozenset(names), conditions=True)
+    if condition.expanded not in parts:
+        return True
+    return judge(condition.expanded, scope).verdict != "fails"

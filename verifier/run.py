@@ -1,0 +1,265 @@
+"""The pipeline: the only place that knows the order of the stages."""
+
+import json
+import tomllib
+from collections.abc import Iterator, Mapping, Sequence
+from pathlib import Path
+from typing import Any
+
+from verifier import catalogue
+from verifier.appendix.compile import compile_pdf
+from verifier.appendix.write import appendix_text, bibliography_text
+from verifier.case.case import Case
+from verifier.case.combinations import combinations
+from verifier.case.read import build_case, read_case
+from verifier.certificate import canonical_text, digest
+from verifier.errors import CaseError
+from verifier.instance.certify import certify
+from verifier.instance.conditions import kept, refuse_undefined
+from verifier.plan import Plan, make_plan
+from verifier.pool import certify_all
+from verifier.progress import Progress
+from verifier.registry import GRAPHS, PREDICATES, QUANTITIES, RULES
+from verifier.results import (
+    DIGESTS,
+    check_target,
+    digests_text,
+    rechecker_files,
+    write_results,
+)
+from verifier.summary import summarise, table_text
+
+
+
+def read_all(paths: Sequence[Path]) -> list[Case]:
+    """Read every case before the first is run.
+
+    Raises
+    ------
+    CaseError
+        With the problems of all of them.
+    """
+    catalogue.load()
+    cases: list[Case] = []
+    problems: list[str] = []
+    for path in paths:
+        try:
+            cases.append(read_case(path))
+        except CaseError as problem:
+            problems.extend(problem.problems)
+    names = [case.name for case in cases]
+    for name in {name for name in names if names.count(name) > 1}:
+        problems.append(f"two cases are called {name}; their results would lie in one folder")
+    if problems:
+        raise CaseError(*problems)
+    return cases
+
+
+def check_case(case: Case, folder: Path, jobs: int, progress: Progress) -> dict[str, Any]:
+    """Run a case and write its results folder.
+
+    Parameters
+    ----------
+    case
+        As read.
+    folder
+        Where the results go; an older results folder there is replaced whole.
+    jobs
+        Worker processes, 1 at least; the results do not depend on it.
+    progress
+        Told how many instances are done.
+
+    Returns
+    -------
+    dict
+        The summary, as in `summary.json`.
+    """
+    check_target(folder)
+    plan = _plan(case)
+    found = combinations(case, lambda made: kept(case, made))
+    refuse_undefined(case, found)
+    certificates, tightest = certify_all(plan, found, jobs, progress)
+    summary = summarise(case, certificates, tightest)
+    write_results(folder, _contents(case, certificates, summary))
+    return summary
+
+
+def measure_one(rule: str, settings: Sequence[str], quantities: Sequence[str]) -> dict[str, Any]:
+    """Measure one instance that the command line states, by way of a case of its own."""
+    catalogue.load()
+    text = _case_text(rule, settings, quantities)
+    case = build_case("command line", "measure", text.encode(), Path.cwd())
+    made = combinations(case, lambda _: True)
+    if len(made) != 1:
+        raise CaseError(f"{len(made)} instances are stated; one was wanted")
+    certificate, _ = certify(_plan(case), made[0], 0)
+    if "reason" in certificate:
+        raise CaseError(certificate["reason"])
+    return summarise(case, [certificate], {})
+
+
+def write_appendix(
+    folder: Path, *, fragment: bool, pdf: bool, all_rows: bool
+) -> Iterator[Path]:
+    """Write the appendix of a results folder anew; yield what was written."""
+    catalogue.load()
+    case, certificates, summary = _read_results(folder)
+    contents = _contents(case, certificates, summary, all_rows=all_rows)
+    (folder / "appendix.tex").write_bytes(contents["appendix.tex"])
+    listed = {name: data for name, data in contents.items() if name != DIGESTS}
+    (folder / DIGESTS).write_text(digests_text(listed), encoding="utf-8")
+    yield folder / "appendix.tex"
+    if fragment:
+        text = _appendix(case, certificates, summary, contents, all_rows=all_rows, fragment=True)
+        (folder / "fragment.tex").write_text(text, encoding="utf-8")
+        yield folder / "fragment.tex"
+    if pdf:
+        compile_pdf(folder, "appendix")
+        yield folder / "appendix.pdf"
+
+
+def vocabulary_lines(kinds: str | None) -> Iterator[str]:
+    """Yield the vocabulary as lines: names, definitions, sources."""
+    catalogue.load()
+    registries: dict[str, Mapping[str, Any]] = {
+        "rules": RULES.entries,
+        "graphs": GRAPHS.entries,
+        "quantities": QUANTITIES.entries,
+        "predicates": PREDICATES.entries,
+    }
+    for title, entries in registries.items():
+        if kinds not in (None, title):
+            continue
+        yield f"{title}:"
+        for name in sorted(entries):
+            entry = entries[name]
+            yield f"  {name}{_signature(entry)}"
+            yield f"      {entry.definition}"
+            if entry.source:
+                yield f"      source: {entry.source}"
+
+
+def _signature(entry: Any) -> str:  # noqa: ANN401 an entry of any kind
+    keys = getattr(entry, "keys", None)
+    if keys:
+        return "  " + ", ".join(
+            f"{name}" if key.default is None else f"{name} = {key.default}"
+            for name, key in keys.items()
+        )
+    arguments = getattr(entry, "arguments", ())
+    shown = {"order": "l", "place": "x", "integer": "a", "polynomial": "f"}
+    if not arguments:
+        return ""
+    letters = "A, B" if arguments == ("place", "place") else ", ".join(shown[a] for a in arguments)
+    orders = getattr(entry, "orders", ())
+    return f"({letters})" + (f"  l = {', '.join(map(str, orders))}" if orders else "")
+
+
+def _plan(case: Case) -> Plan:
+    return make_plan(case, frozenset({*QUANTITIES.entries, *PREDICATES.entries}))
+
+
+def _contents(
+    case: Case,
+    certificates: Sequence[Mapping[str, Any]],
+    summary: Mapping[str, Any],
+    *,
+    all_rows: bool = False,
+) -> dict[str, bytes]:
+    """Return every file of a results folder but its digests."""
+    found: dict[str, bytes] = {
+        "case.toml": case.text,
+        "certificates.jsonl": "".join(
+            canonical_text(dict(one)) + "\n" for one in certificates
+        ).encode(),
+        "summary.json": (canonical_text(dict(summary)) + "\n").encode(),
+    }
+    found |= {f"inputs/{name}": data for name, data in case.inputs.items()}
+    found |= {
+        f"tables/{table.name}.csv": table_text(table, certificates).encode()
+        for table in case.tables
+    }
+    found |= rechecker_files()
+    found["references.bib"] = bibliography_text(case).encode()
+    text = _appendix(case, certificates, summary, found, all_rows=all_rows, fragment=False)
+    found["appendix.tex"] = text.encode()
+    return found
+
+
+def _appendix(  # noqa: PLR0913 what is printed and how
+    case: Case,
+    certificates: Sequence[Mapping[str, Any]],
+    summary: Mapping[str, Any],
+    contents: Mapping[str, bytes],
+    *,
+    all_rows: bool,
+    fragment: bool,
+) -> str:
+    digests = {name: digest(data) for name, data in contents.items() if name != "appendix.tex"}
+    return appendix_text(
+        case, summary, certificates, digests, fragment=fragment, all_rows=all_rows
+    )
+
+
+def _read_results(folder: Path) -> tuple[Case, list[dict[str, Any]], dict[str, Any]]:
+    """Return case, certificates and summary of a results folder."""
+    try:
+        data = (folder / "case.toml").read_bytes()
+        lines = (folder / "certificates.jsonl").read_text(encoding="utf-8").splitlines()
+        certificates = [json.loads(line) for line in lines]
+        summary = json.loads((folder / "summary.json").read_text(encoding="utf-8"))
+        case = build_case(str(folder / "case.toml"), summary["case"], data, folder / "inputs")
+    except (OSError, ValueError, KeyError, TypeError) as problem:
+        raise CaseError(f"{folder}: is no results folder of this tool: {problem}") from problem
+    return case, certificates, summary
+
+
+def _case_text(rule: str, settings: Sequence[str], quantities: Sequence[str]) -> str:
+    """Return the case file that a `measure` command states."""
+    sequence: dict[str, str] = {"rule": json.dumps(rule)}
+    parameters: dict[str, str] = {}
+    graph: dict[str, str] = {}
+    for setting in settings:
+        name, equals, given = setting.partition("=")
+        if not equals or not name:
+            raise CaseError(f"{setting!r} stands there; NAME=VALUE was wanted")
+        target = sequence
+        if name == "kind":
+            target = graph
+        elif name not in _sequence_keys(rule):
+            target = parameters
+        if name in target:
+            raise CaseError(f"{name} is given twice")
+        target[name] = _toml_value(given) if target is not parameters else _parameter(name, given)
+    lines = ["format = 1", 'title = "One instance"', "[parameters]", *_lines(parameters)]
+    lines += ["[sequence]", *_lines(sequence)]
+    if graph:
+        lines += ["[graph]", *_lines(graph)]
+    lines += ["[measure]", f"quantities = {json.dumps(list(quantities))}"]
+    return "\n".join(lines) + "\n"
+
+
+def _sequence_keys(rule: str) -> set[str]:
+    entry = RULES.find(rule)
+    return {*entry.keys, "indices", "symmetrise"}
+
+
+def _lines(table: Mapping[str, str]) -> list[str]:
+    return [f"{json.dumps(name)} = {text}" for name, text in table.items()]
+
+
+def _parameter(name: str, given: str) -> str:
+    if name == "f":
+        return f"{{ polynomials = [{json.dumps(given)}] }}"
+    return f"{{ values = [{_toml_value(given)}] }}"
+
+
+def _toml_value(given: str) -> str:
+    """Return an integer as it stands, anything else as a text."""
+    try:
+        parsed = tomllib.loads(f"x = {given}")["x"]
+    except tomllib.TOMLDecodeError:
+        return json.dumps(given)
+    return given if type(parsed) is int else json.dumps(given)
+
+
