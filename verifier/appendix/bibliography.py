@@ -67,12 +67,12 @@ class Citations:
         return sorted((self.known[key] for key in self.keys), key=_by_author)
 
     def source(self, text: str) -> Latex:
-        """Return a `source` of the registries, whose leading words may be a key of a source.
+        r"""Return a `source` of the registries, whose leading words may be a key of a source.
 
         Examples
         --------
         >>> print(Citations(published()).source("Weil1948, chapter 2").code)
-        \\cite[{chapter 2}]{Weil1948}
+        \cite[{chapter 2}]{Weil1948}
         """
         pieces = [self._piece(piece.strip()) for piece in text.split(";")]
         return Latex("; ".join(pieces))

@@ -1,4 +1,4 @@
-"""Run pdflatex safely: no shell, no files outside its folder, a time limit, the same bytes each time."""
+"""Run pdflatex safely: no shell, no files from elsewhere, a time limit, the same bytes again."""
 
 import os
 import re

@@ -28,16 +28,13 @@ def sequence_sentences(case: Case, cite: Cite, source: Callable[[str], Latex]) -
     if table.symmetrise == "mirror":
         made.append(
             Latex(
-                "The sequence is then mirrored: $e_{N-x}$ is replaced by $e_x$ for "
-                "$1\\le x<N/2$."
+                "The sequence is then mirrored: $e_{N-x}$ is replaced by $e_x$ for $1\\le x<N/2$."
             )
         )
     return made
 
 
-def _rule(
-    case: Case, table: SequenceTable, cite: Cite, source: Callable[[str], Latex]
-) -> Latex:
+def _rule(case: Case, table: SequenceTable, cite: Cite, source: Callable[[str], Latex]) -> Latex:
     name = f"appendix/rules/{table.rule}.tex.jinja"
     entry = RULES.entries.get(table.rule)
     after = f" See {source(entry.source).code}." if entry is not None and entry.source else ""

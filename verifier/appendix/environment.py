@@ -12,7 +12,9 @@ from verifier.appendix.escape import Latex, tex
 def template_root() -> Traversable:
     """Return the templates of an installed package, or else those of a checkout."""
     shipped = files("verifier").joinpath("_templates")
-    if shipped.is_dir():  # first: a folder called templates beside site-packages may be a stranger's
+    if (
+        shipped.is_dir()
+    ):  # first: a folder called templates beside site-packages may be a stranger's
         return shipped
     return Path(__file__).resolve().parents[2] / "templates"
 

@@ -29,12 +29,12 @@ LETTERS = {
     "ß": r"\ss{}", "Æ": r"\AE{}", "æ": r"\ae{}", "Œ": r"\OE{}", "œ": r"\oe{}",
     "Ø": r"\O{}", "ø": r"\o{}", "Ł": r"\L{}", "ł": r"\l{}", "Đ": r"\DJ{}", "đ": r"\dj{}",
     "Ð": r"\DH{}", "ð": r"\dh{}", "Þ": r"\TH{}", "þ": r"\th{}", "Ŋ": r"\NG{}", "ŋ": r"\ng{}",
-    "ı": r"\i{}", "¡": r"\textexclamdown{}", "¿": r"\textquestiondown{}", "§": r"\S{}",
-    "«": r"\guillemotleft{}", "»": r"\guillemotright{}", "‹": r"\guilsinglleft{}",
-    "›": r"\guilsinglright{}", "‘": r"\textquoteleft{}", "’": r"\textquoteright{}",
-    "“": r"\textquotedblleft{}", "”": r"\textquotedblright{}", "‚": r"\quotesinglbase{}",
-    "„": r"\quotedblbase{}", "–": r"\textendash{}", "—": r"\textemdash{}",
-    "‐": "-", "‑": r"\mbox{-}", "…": r"\textellipsis{}",
+    "\u0131": r"\i{}", "¡": r"\textexclamdown{}", "¿": r"\textquestiondown{}", "§": r"\S{}",
+    "«": r"\guillemotleft{}", "»": r"\guillemotright{}", "\u2039": r"\guilsinglleft{}",
+    "\u203a": r"\guilsinglright{}", "\u2018": r"\textquoteleft{}", "\u2019": r"\textquoteright{}",
+    "“": r"\textquotedblleft{}", "”": r"\textquotedblright{}", "\u201a": r"\quotesinglbase{}",
+    "„": r"\quotedblbase{}", "\u2013": r"\textendash{}", "\u2014": r"\textemdash{}",
+    "\u2010": "-", "\u2011": r"\mbox{-}", "…": r"\textellipsis{}",
 }  # fmt: skip
 ACCENTS = {
     "\u0300": "`", "\u0301": "'", "\u0302": "^", "\u0303": "~", "\u0304": "=", "\u0306": "u",
@@ -56,11 +56,11 @@ class Latex:
 
 
 def plain(text: str) -> str:
-    """Return `text` composed, on one line, without control and direction characters.
+    r"""Return `text` composed, on one line, without control and direction characters.
 
     Examples
     --------
-    >>> plain(" two\\n\\n lines\u202e ")
+    >>> plain(" two\n\n lines\u202e ")
     'two lines'
     """
     spaced = re.sub(r"\s+", " ", unicodedata.normalize("NFC", text))
@@ -69,7 +69,7 @@ def plain(text: str) -> str:
 
 
 def tex(text: str) -> str:
-    """Return `text` as LaTeX that prints it.
+    r"""Return `text` as LaTeX that prints it.
 
     Raises
     ------
@@ -79,7 +79,7 @@ def tex(text: str) -> str:
     Examples
     --------
     >>> print(tex("50% of x_1 -- Erdős"))
-    50\\% of x\\_1 -{}- Erd\\H{o}s
+    50\% of x\_1 -{}- Erd\H{o}s
     """
     refused = unprintable(text)
     if refused is not None:

@@ -135,14 +135,18 @@ def _paley() -> Mapping[str, Identity]:
     cycles = walks - p * (2 * degree**2 - degree)
     return {
         "Paley agreements": Identity(
-            Side(agreements, r"\frac{p^{2}}{2}+p(p-1)"), Side(p * (3 * p - 2) / 2, r"\frac{p(3p-2)}{2}")
+            Side(agreements, r"\frac{p^{2}}{2}+p(p-1)"),
+            Side(p * (3 * p - 2) / 2, r"\frac{p(3p-2)}{2}"),
         ),
         "Paley codegrees": Identity(
             Side(codegrees, r"\frac{p(p-2)}{4}+\frac{3p(p-1)}{4}"),
             Side(p * (4 * p - 5) / 4, r"\frac{p(4p-5)}{4}"),
         ),
         "Paley four-cycles": Identity(
-            Side(cycles, r"\frac{p(p-1)^{2}}{4}+\frac{p(p-1)((p-5)^{2}+(p-1)^{2})}{32}-\frac{p(p-1)(p-2)}{2}"),
+            Side(
+                cycles,
+                r"\frac{p(p-1)^{2}}{4}+\frac{p(p-1)((p-5)^{2}+(p-1)^{2})}{32}-\frac{p(p-1)(p-2)}{2}",
+            ),
             Side(p * (p - 1) * (p - 5) ** 2 / 16, r"\frac{p(p-1)(p-5)^{2}}{16}"),
         ),
     }

@@ -1,12 +1,12 @@
-"""The maths that an author may write in `heads` and `[notation]`: a small grammar, nothing else.
+r"""The maths that an author may write in `heads` and `[notation]`: a small grammar, nothing else.
 
 A text is accepted only if all of it is read by the grammar below, so an accepted text is balanced,
 calls no command outside the lists, and cannot stop the LaTeX run.
 
     maths  = { atom [scripts] }
     atom   = letter | digit | sign | symbol | command argument... | "{" maths "}"
-           | "\\left" delimiter maths "\\right" delimiter
-    script = ("^" | "_") (letter | digit | symbol | "{" maths "}"), each at most once; primes
+           | "\left" delimiter maths "\right" delimiter
+    script = ("^" | "_") (letter | digit | "{" maths "}"), each at most once; primes
 """
 
 import re
@@ -17,31 +17,42 @@ from verifier.appendix.escape import Latex, tex_keeping_blanks, unprintable
 LONGEST = 120
 DEEPEST = 12
 
-SYMBOLS = frozenset(
+
+def _words(text: str) -> frozenset[str]:
+    return frozenset(text.split())
+
+
+LETTERS = _words(  # these may also stand as a script without braces
     """
     alpha beta gamma delta epsilon varepsilon zeta eta theta vartheta iota kappa lambda mu nu xi pi
     rho varrho sigma tau upsilon phi varphi chi psi omega Gamma Delta Theta Lambda Xi Pi Sigma
-    Upsilon Phi Psi Omega ell hbar imath jmath Re Im partial infty emptyset varnothing nabla
-    sum prod max min sup inf log exp sin cos tan gcd lcm deg det dim ker lim arg
+    Upsilon Phi Psi Omega ell partial infty prime ast star circ bullet
+    """
+)
+SYMBOLS = LETTERS | _words(
+    """
+    hbar imath jmath Re Im emptyset varnothing nabla
+    sum prod max min sup inf log exp sin cos tan gcd deg det dim ker lim arg
     le leq ge geq ne neq equiv approx sim simeq cong subset subseteq in notin ni mid nmid parallel
-    pm mp times cdot ast star circ bullet oplus otimes cup cap setminus wedge vee
-    to mapsto leftarrow rightarrow leftrightarrow Rightarrow ldots cdots dots prime forall exists
+    pm mp times cdot oplus otimes cup cap setminus wedge vee
+    to mapsto leftarrow rightarrow leftrightarrow Rightarrow ldots cdots dots forall exists
     neg square blacksquare triangle langle rangle lfloor rfloor lceil rceil lvert rvert lVert rVert
     vert Vert quad qquad
-    """.split()
+    """
 )
-COMMANDS = {
-    **dict.fromkeys(
-        "mathrm mathit mathbf mathsf mathtt mathcal mathbb mathfrak operatorname hat widehat bar "
-        "overline underline tilde widetilde vec dot ddot sqrt".split(),
-        1,
-    ),
-    **dict.fromkeys("frac tfrac dfrac binom".split(), 2),
-}
-SIZES = frozenset("big Big bigl bigr Bigl Bigr bigg biggl biggr".split())
-DELIMITERS = frozenset(
-    "( ) [ ] | / . \\{ \\} \\| \\langle \\rangle \\lfloor \\rfloor \\lceil \\rceil \\lvert \\rvert "
-    "\\lVert \\rVert \\vert \\Vert".split()
+ONE = _words(
+    """
+    mathrm mathit mathbf mathsf mathtt mathcal mathbb mathfrak operatorname hat widehat bar
+    overline underline tilde widetilde vec dot ddot sqrt
+    """
+)
+COMMANDS = dict.fromkeys(ONE, 1) | dict.fromkeys(_words("frac tfrac dfrac binom"), 2)
+SIZES = _words("big Big bigl bigr Bigl Bigr bigg biggl biggr")
+DELIMITERS = _words(
+    r"""
+    ( ) [ ] | / . \{ \} \| \langle \rangle \lfloor \rfloor \lceil \rceil \lvert \rvert
+    \lVert \rVert \vert \Vert
+    """
 )
 SPACES = frozenset(("\\,", "\\;", "\\:", "\\!", "\\ "))
 SIGNS = frozenset("+-*/=<>()[]|.,:;!?")
@@ -55,16 +66,16 @@ class _Refused(Exception):  # noqa: N818 it never leaves this file
 
 @dataclass
 class _Reader:
-    tokens: list[str]
+    lexemes: list[str]
     place: int = 0
 
     def peek(self) -> str:
-        return self.tokens[self.place] if self.place < len(self.tokens) else ""
+        return self.lexemes[self.place] if self.place < len(self.lexemes) else ""
 
     def take(self) -> str:
-        token = self.peek()
+        lexeme = self.peek()
         self.place += 1
-        return token
+        return lexeme
 
     def maths(self, depth: int, ends: tuple[str, ...]) -> None:
         """Read atoms up to one of `ends`, which stays unread; "" is the end of the text."""
@@ -77,21 +88,21 @@ class _Reader:
             self.scripts(depth)
 
     def atom(self, depth: int) -> None:
-        token = self.take()
-        if token == "{":
+        lexeme = self.take()
+        if lexeme == "{":
             self.group_rest(depth)
-        elif token == "\\left":
+        elif lexeme == "\\left":
             self.delimiter()
             self.maths(depth + 1, ("\\right",))
             self.take()
             self.delimiter()
-        elif token[1:] in SIZES:
+        elif lexeme[1:] in SIZES:
             self.delimiter()
-        elif token.startswith("\\") and token[1:] in COMMANDS:
-            for _ in range(COMMANDS[token[1:]]):
-                self.group(token, depth)
-        elif not _single(token):
-            raise _Refused(_why(token))
+        elif lexeme.startswith("\\") and lexeme[1:] in COMMANDS:
+            for _ in range(COMMANDS[lexeme[1:]]):
+                self.group(lexeme, depth)
+        elif not _single(lexeme):
+            raise _Refused(_why(lexeme))
 
     def group(self, owner: str, depth: int) -> None:
         self.blanks()
@@ -104,9 +115,9 @@ class _Reader:
         self.take()
 
     def delimiter(self) -> None:
-        token = self.take()
-        if token not in DELIMITERS:
-            raise _Refused(f"{token!r} is no delimiter" if token else "a delimiter is missing")
+        lexeme = self.take()
+        if lexeme not in DELIMITERS:
+            raise _Refused(f"{lexeme!r} is no delimiter" if lexeme else "a delimiter is missing")
 
     def blanks(self) -> None:
         while self.peek() == " ":
@@ -116,18 +127,18 @@ class _Reader:
         seen: set[str] = set()
         while True:
             self.blanks()
-            token = self.peek()
-            if token not in ("^", "_", "'"):
+            lexeme = self.peek()
+            if lexeme not in ("^", "_", "'"):
                 return
             self.take()
-            kind = "^" if token == "'" else token
+            kind = "^" if lexeme == "'" else lexeme
             if kind in seen:
-                raise _Refused(f"a second {token} on one letter; use braces")
+                raise _Refused(f"a second {lexeme} on one letter; use braces")
             seen.add(kind)
-            if token == "'":
+            if lexeme == "'":
                 self.primes()
             else:
-                self.script(token, depth)
+                self.script(lexeme, depth)
 
     def primes(self) -> None:
         while self.peek() == "'":
@@ -137,35 +148,35 @@ class _Reader:
 
     def script(self, owner: str, depth: int) -> None:
         self.blanks()
-        token = self.take()
-        if token == "{":
+        lexeme = self.take()
+        if lexeme == "{":
             self.group_rest(depth)
-        elif not token or token == " " or not _single(token) or token in SPACES:
+        elif lexeme[1:] not in LETTERS and not (lexeme.isascii() and lexeme.isalnum()):
             raise _Refused(f"{owner} wants a letter, a digit or a group in braces")
 
 
-def _single(token: str) -> bool:
-    if token.startswith("\\"):
-        return token[1:] in SYMBOLS or token in SPACES or token in ("\\{", "\\}", "\\|")
-    return token == " " or token in SIGNS or (token.isascii() and token.isalnum())
+def _single(lexeme: str) -> bool:
+    if lexeme.startswith("\\"):
+        return lexeme[1:] in SYMBOLS or lexeme in SPACES or lexeme in ("\\{", "\\}", "\\|")
+    return lexeme == " " or lexeme in SIGNS or (lexeme.isascii() and lexeme.isalnum())
 
 
-def _why(token: str) -> str:
-    if token.startswith("\\") and len(token) > 1:
-        return f"the command {token} is not allowed"
-    if token in ("^", "_"):
-        return f"{token} stands on nothing"
-    return f"{token!r} is not allowed in maths"
+def _why(lexeme: str) -> str:
+    if lexeme.startswith("\\") and len(lexeme) > 1:
+        return f"the command {lexeme} is not allowed"
+    if lexeme in ("^", "_"):
+        return f"{lexeme} stands on nothing"
+    return f"{lexeme!r} is not allowed in maths"
 
 
 def check_maths(text: str) -> str | None:
-    """Return why `text` is no maths that an appendix prints, or None if it is.
+    r"""Return why `text` is no maths that an appendix prints, or None if it is.
 
     Examples
     --------
-    >>> check_maths(r"\\Sigma_6(G)")
-    >>> check_maths(r"\\input{x}")
-    'the command \\\\input is not allowed'
+    >>> check_maths(r"\Sigma_6(G)")
+    >>> check_maths(r"\input{x}")
+    'the command \\input is not allowed'
     >>> check_maths("x^^5cinput")
     '^^ is not allowed'
     """
@@ -183,11 +194,11 @@ def check_maths(text: str) -> str | None:
 
 
 def check_head(text: str) -> str | None:
-    """Return why `text` is no head of a column, or None if it is: words, and maths between dollars.
+    r"""Return why `text` is no head of a column, or None if it is words, and maths in dollars.
 
     Examples
     --------
-    >>> check_head("$\\\\Sigma$ over $n$")
+    >>> check_head("$\\Sigma$ over $n$")
     >>> check_head("cost in $")
     'a $ without its partner'
     """

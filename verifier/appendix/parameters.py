@@ -3,8 +3,8 @@
 from collections.abc import Mapping
 
 from verifier.appendix.escape import Latex, tex
-from verifier.appendix.values import RATIONAL, digits
 from verifier.appendix.polynomials import polynomial
+from verifier.appendix.values import RATIONAL, digits
 from verifier.case.case import Family, Parameter, Polynomials, Primes, Values
 
 LISTED = 24
@@ -74,12 +74,12 @@ def _family(family: Family) -> str:
 
 
 def place(parameters: Mapping[str, str]) -> Latex:
-    """Return the parameters of one instance as `p = 29, f = x^4 + 3`.
+    r"""Return the parameters of one instance as `p = 29, f = x^4 + 3`.
 
     Examples
     --------
     >>> print(place({"p": "29", "f": "x^4 + 3"}).code)
-    $p=29$, $f=x^{4}+\\allowbreak 3$
+    $p=29$, $f=x^{4}+\allowbreak 3$
     """
     if not parameters:
         return Latex("the one instance")

@@ -16,58 +16,58 @@ def polynomial(text: str) -> Latex:
     >>> print(polynomial("x^12 - 2*x^3 + 7").code)
     $x^{12}-\allowbreak 2x^{3}+\allowbreak 7$
     """
-    tokens = tokens_of(text)
-    if tokens is None:
+    lexemes = lexemes_of(text)
+    if lexemes is None:
         return Latex(tex(text))
-    return Latex(f"${''.join(_terms(tokens))}$")
+    return Latex(f"${''.join(_terms(lexemes))}$")
 
 
-def tokens_of(text: str) -> list[str] | None:
-    """Return the tokens of a polynomial, or None if something else stands in `text`."""
-    tokens: list[str] = []
+def lexemes_of(text: str) -> list[str] | None:
+    """Return the lexemes of a polynomial, or None if something else stands in `text`."""
+    lexemes: list[str] = []
     place, kept = 0, text.rstrip()
     while place < len(kept):
         found = TOKEN.match(kept, place)
         if found is None:
             return None
-        tokens.append(found.group(1))
+        lexemes.append(found.group(1))
         place = found.end()
-    return tokens if tokens and tokens.count("(") == tokens.count(")") else None
+    return lexemes if lexemes and lexemes.count("(") == lexemes.count(")") else None
 
 
-def _terms(tokens: list[str]) -> list[str]:
+def _terms(lexemes: list[str]) -> list[str]:
     made: list[str] = []
     place = 0
-    while place < len(tokens):
-        token = tokens[place]
+    while place < len(lexemes):
+        lexeme = lexemes[place]
         place += 1
-        if token == "^":
-            exponent, place = _exponent(tokens, place)
+        if lexeme == "^":
+            exponent, place = _exponent(lexemes, place)
             made.append(f"^{{{exponent}}}")
-        elif token == "*":
-            following = tokens[place] if place < len(tokens) else ""
+        elif lexeme == "*":
+            following = lexemes[place] if place < len(lexemes) else ""
             made.append(r"\cdot " if following[:1].isdigit() else "")
-        elif token in "+-" and made and made[-1] != "(":
-            made.append(f"{token}\\allowbreak ")
+        elif lexeme in "+-" and made and made[-1] != "(":
+            made.append(f"{lexeme}\\allowbreak ")
         else:
-            made.append(_atom(token))
+            made.append(_atom(lexeme))
     return made
 
 
-def _exponent(tokens: list[str], place: int) -> tuple[str, int]:
+def _exponent(lexemes: list[str], place: int) -> tuple[str, int]:
     end = place + 1
-    if tokens[place : place + 1] == ["("]:
+    if lexemes[place : place + 1] == ["("]:
         depth = 1
-        while depth and end < len(tokens):
-            depth += {"(": 1, ")": -1}.get(tokens[end], 0)
+        while depth and end < len(lexemes):
+            depth += {"(": 1, ")": -1}.get(lexemes[end], 0)
             end += 1
-    if tokens[end : end + 1] == ["^"]:
-        inner, after = _exponent(tokens, end + 1)
-        return f"{''.join(_terms(tokens[place:end]))}^{{{inner}}}", after
-    return "".join(_terms(tokens[place:end])), end
+    if lexemes[end : end + 1] == ["^"]:
+        inner, after = _exponent(lexemes, end + 1)
+        return f"{''.join(_terms(lexemes[place:end]))}^{{{inner}}}", after
+    return "".join(_terms(lexemes[place:end])), end
 
 
-def _atom(token: str) -> str:
-    if len(token) > 1 and SPELT.match(token):
-        return rf"\mathit{{{token.replace('_', chr(92) + '_')}}}"
-    return token
+def _atom(lexeme: str) -> str:
+    if len(lexeme) > 1 and SPELT.match(lexeme):
+        return rf"\mathit{{{lexeme.replace('_', chr(92) + '_')}}}"
+    return lexeme

@@ -112,12 +112,15 @@ def _character_sums(facts: Facts, shared: dict[str, object]) -> Chosen:
     if facts.uses(*AGREEMENTS) and facts.all_of("graph", "circulant") and facts.full_period():
         yield "weil-agreement", shared
     if facts.within_period() and facts.uses(*PARTIAL, *ORDERED):
-        yield "incomplete", {
-            **shared,
-            "correlation": facts.uses("correlation"),
-            "distribution": facts.uses("well_distribution"),
-            "order_three": "correlation(3)" in facts.measured(),
-        }
+        yield (
+            "incomplete",
+            {
+                **shared,
+                "correlation": facts.uses("correlation"),
+                "distribution": facts.uses("well_distribution"),
+                "order_three": "correlation(3)" in facts.measured(),
+            },
+        )
 
 
 def _hypotheses(facts: Facts) -> Latex:

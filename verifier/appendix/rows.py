@@ -6,8 +6,8 @@ from typing import Any
 
 from verifier.appendix.escape import Latex, tex
 from verifier.appendix.facts import Certificate, base
-from verifier.appendix.values import value
 from verifier.appendix.parameters import place
+from verifier.appendix.values import value
 from verifier.appendix.verdicts import verdict
 from verifier.case.case import Case
 from verifier.certificate import canonical_text
@@ -19,7 +19,7 @@ DIGEST = 12
 
 
 def line_digest(found: Certificate) -> str:
-    """Return the first 12 hexadecimal digits of the SHA-256 of a certificate's line, line feed included."""
+    """Return the first 12 hexadecimal digits of the SHA-256 of a line with its line feed."""
     line = canonical_text(dict(found)) + "\n"
     return hashlib.sha256(line.encode("utf-8")).hexdigest()[:DIGEST]
 
@@ -41,9 +41,7 @@ def certificate_tables(
     made: list[dict[str, object]] = []
     digests = [line_digest(found) for found in certificates]
     for number, claim in enumerate(summary["claims"], start=1):
-        indices = (
-            list(range(len(certificates))) if complete else _telling(claim, certificates)
-        )
+        indices = list(range(len(certificates))) if complete else _telling(claim, certificates)
         rows = [
             _row(certificates[index], index, claim["name"], digests[index], typed)
             for index in indices
@@ -69,7 +67,7 @@ def measured_table(
     *,
     all_rows: bool,
 ) -> dict[str, object] | None:
-    """Return the values that the case only measures, one row an instance, or None if it asks none."""
+    """Return what the case only measures, one row an instance; None if it asks for nothing."""
     if not case.measure:
         return None
     asked = {base(condition.text) for condition in case.measure}

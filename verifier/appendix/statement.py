@@ -121,9 +121,7 @@ def _source(claim: Claim, case: Case, citations: Citations) -> Latex | str:
 
 def _verdict(judged: Mapping[str, Any]) -> Latex:
     counts = [
-        f"{judged[word]} {word}"
-        for word in ("holds", "fails", "outside", "open")
-        if judged[word]
+        f"{judged[word]} {word}" for word in ("holds", "fails", "outside", "open") if judged[word]
     ]
     total = sum(judged[word] for word in ("holds", "fails", "outside", "open"))
     if judged["trivial"] == total and total:
@@ -136,7 +134,9 @@ def _verdict(judged: Mapping[str, Any]) -> Latex:
 
 def discriminant_sentences(case: Case, facts: Facts) -> list[Latex]:
     """Return, for listed polynomials over Q, the primes modulo which they may not be squarefree."""
-    primes = sorted({int(found["known"]["p"]) for found in facts.certificates if "p" in found["known"]})
+    primes = sorted(
+        {int(found["known"]["p"]) for found in facts.certificates if "p" in found["known"]}
+    )
     made: list[str] = []
     for parameter in case.parameters:
         if isinstance(parameter, Polynomials):
@@ -165,8 +165,11 @@ def _discriminant(text: str, tree: Any, primes: Sequence[int]) -> str:  # noqa: 
         return ""
     shown = polynomial(text).code
     if found.value == 0:
-        return f"{shown} has discriminant $0$: it is squarefree modulo no prime that keeps its degree."
-    return f"For {shown}: $a={found.leading}$, $\\operatorname{{disc}}={found.value}$, {_excluded(found, primes)}."
+        return (
+            f"{shown} has discriminant $0$: it is squarefree modulo no prime that keeps its degree."
+        )
+    values = f"$a={found.leading}$, $\\operatorname{{disc}}={found.value}$"
+    return f"For {shown}: {values}, {_excluded(found, primes)}."
 
 
 def _excluded(found: Discriminant, primes: Sequence[int]) -> str:

@@ -6,8 +6,8 @@ from typing import Any
 from verifier.appendix.escape import Latex, tex
 from verifier.appendix.facts import Certificate
 from verifier.appendix.maths import head
-from verifier.appendix.values import DECIMAL, RATIONAL, cell
 from verifier.appendix.polynomials import polynomial
+from verifier.appendix.values import DECIMAL, RATIONAL, cell
 from verifier.appendix.verdicts import verdict
 from verifier.case.case import Case, Table
 

@@ -112,11 +112,10 @@ def _point(whole: int, places: int) -> str:
 
 def _ends(canonical: Mapping[str, Json]) -> tuple[str, str]:
     lower, upper = canonical.get("lower"), canonical.get("upper")
-    if not (isinstance(lower, str) and isinstance(upper, str)):
+    ends = [end for end in (lower, upper) if isinstance(end, str) and DECIMAL.fullmatch(end)]
+    if len(ends) != 2:
         raise ValueError(f"{canonical!r} is no enclosure")
-    if not (DECIMAL.fullmatch(lower) and DECIMAL.fullmatch(upper)):
-        raise ValueError(f"{canonical!r} is no enclosure")
-    return lower, upper
+    return ends[0], ends[1]
 
 
 def _long(rational: str) -> Latex:

@@ -6,8 +6,8 @@ from typing import Any
 
 from verifier.appendix.escape import Latex, tex
 from verifier.appendix.facts import Certificate, base
-from verifier.appendix.values import short, value
 from verifier.appendix.parameters import place
+from verifier.appendix.values import short, value
 from verifier.case.case import Case, Condition
 from verifier.registry import PREDICATES, QUANTITIES
 
@@ -26,9 +26,7 @@ def verdict(word: str) -> Latex:
 
 def summary_rows(summary: Mapping[str, Any]) -> list[dict[str, object]]:
     """Return one row a claim: its verdict, counts, and the tightest instance."""
-    return [
-        _summary_row(number, claim) for number, claim in enumerate(summary["claims"], start=1)
-    ]
+    return [_summary_row(number, claim) for number, claim in enumerate(summary["claims"], start=1)]
 
 
 def _summary_row(number: int, claim: Mapping[str, Any]) -> dict[str, object]:
@@ -95,9 +93,7 @@ def failure_groups(
         groups.append(
             {
                 "heading": _heading(claim),
-                "sentences": [
-                    failure_sentence(found, name, spoken[name], typed) for found in kept
-                ],
+                "sentences": [failure_sentence(found, name, spoken[name], typed) for found in kept],
                 "omitted": len(marked) - len(kept),
             }
         )
@@ -128,9 +124,7 @@ def mentioned(condition: Condition, case: Case) -> frozenset[str]:
     return frozenset(names)
 
 
-def failure_sentence(
-    found: Certificate, name: str, spoken: frozenset[str], typed: Typed
-) -> Latex:
+def failure_sentence(found: Certificate, name: str, spoken: frozenset[str], typed: Typed) -> Latex:
     """Return why a claim fails or is open at an instance, with the witnesses that show it."""
     judged = found["claims"][name]
     sign = verdict(judged["verdict"]).code
@@ -149,7 +143,9 @@ def _why(judged: Mapping[str, Any], typed: Typed) -> str:
             f"{value(judged['right']).code}"
         )
     parts = [part for part in judged.get("parts", []) if part["verdict"] != "holds"]
-    return "; ".join(_part(part, typed) for part in parts) or "the parts hold, their junction does not"
+    return (
+        "; ".join(_part(part, typed) for part in parts) or "the parts hold, their junction does not"
+    )
 
 
 def _part(part: Mapping[str, Any], typed: Typed) -> str:

@@ -30,10 +30,7 @@ from verifier.appendix.tables import case_tables
 from verifier.appendix.verdicts import failure_groups, summary_rows, tightest_sentences
 from verifier.case.case import Case
 
-PACKAGES = (
-    "amsmath", "amssymb", "amsthm", "mathtools", "booktabs", "longtable", "array", "xcolor",
-    "microtype", "url",
-)  # fmt: skip
+PACKAGES = ("amsmath", "amssymb", "amsthm", "booktabs", "longtable", "array", "xcolor", "url")
 LONGEST_LINE = 180
 CONVENTIONS = Latex(
     r"An irrational value is printed as $1.234_{5}^{6}$: it lies between $1.2345$ (below) and "
@@ -43,7 +40,7 @@ CONVENTIONS = Latex(
 Summary = Mapping[str, Any]
 
 
-def appendix_text(  # noqa: PLR0913 what an appendix is made of
+def appendix_text(
     case: Case,
     summary: Summary,
     certificates: Sequence[Certificate],
@@ -52,7 +49,7 @@ def appendix_text(  # noqa: PLR0913 what an appendix is made of
     fragment: bool = False,
     all_rows: bool = False,
 ) -> str:
-    """Return the appendix as LaTeX source in ASCII, lines of at most 200 characters.
+    r"""Return the appendix as LaTeX source in ASCII, lines of at most 200 characters.
 
     Parameters
     ----------
@@ -63,7 +60,7 @@ def appendix_text(  # noqa: PLR0913 what an appendix is made of
     digests
         File name to SHA-256 in hexadecimal, of the other files of the results folder.
     fragment
-        The form that is input in a host document after \\appendix, instead of a document.
+        The form that is input in a host document after \appendix, instead of a document.
     all_rows
         Print all rows, also beyond 5,000.
 
@@ -78,9 +75,7 @@ def appendix_text(  # noqa: PLR0913 what an appendix is made of
     return folded(render(f"appendix/{form}.tex.jinja", **values).code)
 
 
-def bibliography_text(
-    case: Case, summary: Summary, certificates: Sequence[Certificate]
-) -> str:
+def bibliography_text(case: Case, summary: Summary, certificates: Sequence[Certificate]) -> str:
     """Return `references.bib`: the sources that the appendix of the case cites, in ASCII."""
     printer = _Printer(case, summary, certificates, fragment=False)
     render("appendix/body.tex.jinja", **printer.values({}, all_rows=False))
