@@ -4,6 +4,7 @@ from collections.abc import Mapping, Sequence
 from typing import Any
 
 from verifier.appendix.bibliography import Citations
+from verifier.appendix.constants import constant_remark
 from verifier.appendix.escape import Latex, tex
 from verifier.appendix.facts import Facts, base
 from verifier.appendix.formulas import Formulas, typed
@@ -100,13 +101,14 @@ def claim_entries(
 def _claim(
     claim: Claim, case: Case, judged: Mapping[str, Any], formulas: Formulas, citations: Citations
 ) -> dict[str, object]:
+    constant = constant_remark(claim.says.expanded)
     given = " and ".join(formulas.inline(condition).code for condition in claim.given)
     return {
         "name": claim.name,
         "given": Latex(given) if given else "",
         "formula": formulas.displayed(claim.says),
         "source": _source(claim, case, citations),
-        "remark": "",
+        "remark": "" if constant is None else Latex(f"Here ${constant.code}$."),
         "verdict": _verdict(judged),
     }
 

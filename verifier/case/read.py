@@ -18,7 +18,8 @@ from verifier.case.sections import (
     read_sequence,
 )
 from verifier.case.shapes import shape_problems
-from verifier.case.typography import maths_problem, unprintable
+from verifier.appendix.escape import unprintable
+from verifier.appendix.maths import check_head, check_maths
 from verifier.errors import CaseError, ExpressionError
 from verifier.expressions.names import expand
 from verifier.expressions.parse import parse
@@ -223,7 +224,7 @@ class _Reader:
                 f"{label}: heads: {len(table.heads)} stand there; {len(columns)} were wanted",
             )
         for j, head in enumerate(table.heads):
-            bad = maths_problem(head, text=True)
+            bad = check_head(head)
             if bad is not None:
                 self.problems.add(["table", i, "heads", j], f"{label}: heads: {bad}")
         if table.expect is not None:
@@ -232,7 +233,7 @@ class _Reader:
 
     def _notation(self, raw: Mapping[str, str]) -> None:
         for name, text in raw.items():
-            bad = maths_problem(text, text=False)
+            bad = check_maths(text)
             if bad is not None:
                 self.problems.add(["notation", name], f"[notation] {name}: {bad}")
             try:

@@ -117,15 +117,19 @@ def rational_value(x: Real) -> Fraction | None:
         return x
     if not x.algebraic:
         return None
+    if x.rational is None:
+        x.rational = (_rational(x),)
+    return x.rational[0]
+
+
+def _rational(x: Node) -> Fraction | None:
     width = x.bounds[1] * x.degree
     for bits in precisions(x):
         low, high = ends(x.ball(bits))
         if high - low >= Fraction(1, 1 << (2 * width + 1)):
             continue
-        candidate = simplest_between(low, high)
-        if candidate.denominator > 1 << width:
-            return None
-        return candidate if compare(x, candidate) == 0 else None
+        candidate = simplest_between(low, high, 1 << width)
+        return candidate if candidate is not None and compare(x, candidate) == 0 else None
     raise UndecidedError(TOO_FINE)
 
 

@@ -26,17 +26,31 @@ def _dyadic(exact: arb) -> Fraction:
     return Fraction(whole << power) if power >= 0 else Fraction(whole, 1 << -power)
 
 
-def simplest_between(low: Fraction, high: Fraction) -> Fraction:
+def simplest_between(low: Fraction, high: Fraction, largest: int) -> Fraction | None:
     """Return the fraction of least denominator in the closed interval, by continued fractions.
+
+    Parameters
+    ----------
+    low, high
+        The ends, low <= high.
+    largest
+        Denominators above this are not wanted: None is returned instead.
 
     Examples
     --------
-    >>> str(simplest_between(Fraction(314, 100), Fraction(315, 100)))
+    >>> str(simplest_between(Fraction(314, 100), Fraction(315, 100), 50))
     '22/7'
+    >>> simplest_between(Fraction(314, 100), Fraction(315, 100), 5)
     """
-    whole = -((-low.numerator) // low.denominator)
-    if whole <= high:
-        return Fraction(whole)
-    below = whole - 1
-    inner = simplest_between(1 / (high - below), 1 / (low - below))
-    return below + 1 / inner
+    a, b, c, d = low.numerator, low.denominator, high.numerator, high.denominator
+    last, before = (1, 0), (0, 1)  # convergents of the common beginning: numerator, denominator
+    while True:
+        whole = -(-a // b)
+        ends_here = whole * d <= c
+        part = whole if ends_here else whole - 1
+        last, before = (part * last[0] + before[0], part * last[1] + before[1]), last
+        if last[1] > largest:
+            return None
+        if ends_here:
+            return Fraction(*last)
+        a, b, c, d = d, c - part * d, b, a - part * b

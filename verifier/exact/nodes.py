@@ -24,6 +24,7 @@ class Node:
     def __init__(self, op: Operation, *args: "Real | int") -> None:
         self.op = op
         self.args = args
+        self.rational: tuple[Fraction | None] | None = None  # what `decide` found, once asked
         self._balls: dict[int, arb] = {}
 
     def __eq__(self, other: object) -> bool:
