@@ -14,6 +14,8 @@ import pytest
 from verifier import catalogue
 from verifier.appendix.bibtex import read_bibtex
 from verifier.appendix.compile import compile_pdf
+from verifier.appendix.escape import unprintable
+from verifier.appendix.maths import check_maths
 from verifier.appendix.write import appendix_text, bibliography_text
 from verifier.case.case import (
     Case,
@@ -28,6 +30,7 @@ from verifier.case.case import (
 )
 from verifier.errors import ToolError
 from verifier.expressions.parse import parse
+from verifier.registry import GRAPHS, PREDICATES, QUANTITIES, RULES
 
 requires_latex = pytest.mark.skipif(
     shutil.which("pdflatex") is None and "CI" not in os.environ,
@@ -161,7 +164,7 @@ def summary_of(case, certificates):
                     "count": len(failing), "first": failing[0] if failing else None,
                     "last": failing[-1] if failing else None, "holds_from": None,
                 },
-            }  # fmt: skip
+            }
         )
     return {
         "format": 1, "case": case.name, "instances": [], "claims": claims,
@@ -305,7 +308,7 @@ def test_order_of_the_parts(text):
 
 
 def test_title_and_about_are_escaped(text):
-    assert "\\title{Circulant graphs \\& 50\\% of Erd\\H{o}s}" in text
+    assert "]{Circulant graphs \\& 50\\% of Erd\\H{o}s}" in text
     assert "The row\\_0 costs \\$5. Nothing else." in text
 
 
@@ -473,6 +476,18 @@ def test_instances_without_a_sequence_are_outside():
     assert "At 1 of them there is no sequence" in made
 
 
+def test_texts_of_the_registries_can_be_printed():
+    for registry in (RULES, GRAPHS, QUANTITIES, PREDICATES):
+        for entry in registry.entries.values():
+            assert unprintable(f"{entry.definition} {entry.source}") is None, entry.name
+    for registry in (QUANTITIES, PREDICATES):
+        for entry in registry.entries.values():
+            filled = entry.symbol
+            for place in range(len(entry.arguments)):
+                filled = filled.replace(f"{{{place}}}", "{2}")
+            assert check_maths(filled) is None, (entry.name, filled)
+
+
 def test_same_results_same_bytes(text):
     assert appendix_text(CASE, SUMMARY, CERTIFICATES, dict(reversed(DIGESTS.items()))) == text
 
@@ -500,6 +515,39 @@ def test_the_appendix_compiles_without_faults(tmp_path, text):
     assert first.startswith(b"%PDF")
     assert sorted(path.name for path in tmp_path.iterdir()) == ["appendix.pdf", "appendix.tex"]
     assert compile_pdf(tmp_path).read_bytes() == first
+    assert faults(log_of(tmp_path, "appendix")) == []
+
+
+@requires_latex
+def test_long_things_break(tmp_path):
+    dense = " + ".join(f"{10**20 + k}*x^{k}" for k in range(40, 0, -1))
+    deep = "1/(" * 12 + "p" + " + 1)" * 12
+    factors = "*".join(f"(p + {k}*agreement_sum)" for k in range(100_000, 100_007))
+    case = a_case(
+        title="A long title on circulant graphs and their relatives " * 4,
+        about="Words without end. " * 100 + "a" * 60,
+        claims=(
+            Claim("a-claim-with-quite-a-long-name-for-a-column-of-a-table", condition(LONG), (), None),
+            Claim("nested", condition(f"agreement_sum <= {deep}"), (condition(LONG),), None),
+            Claim("product", condition(f"{factors} <= 1 and {factors} != 2"), (), None),
+        ),
+        tables=(
+            Table("wide", tuple(condition(f"agreement_sum/{k}") for k in range(1, 9)), (), None),
+        ),
+    )
+    left, right = "9" * 150 + "/" + "7" * 150, {"lower": "1" * 90, "upper": "1" * 89 + "2"}
+    found = [
+        {
+            **one,
+            "parameters": {"p": "5", "f": dense, "a_long_name": "123456789012345678901234567890"},
+            "claims": {c.name: relation(left, right, holds=i == 0, ratio=left) for c in case.claims},
+            "tables": {"wide": ["12345678901234567890/7"] * 8},
+        }
+        for i, one in enumerate(CERTIFICATES[:3])
+    ]
+    made = appendix_text(case, summary_of(case, found), found, DIGESTS)
+    assert max(map(len, made.splitlines())) <= 200
+    (tmp_path / "appendix.tex").write_text(made, encoding="ascii")
     assert faults(log_of(tmp_path, "appendix")) == []
 
 

@@ -14,11 +14,13 @@ from jinja2 import TemplateNotFound, UndefinedError
 from verifier.appendix import identities
 from verifier.appendix.bibliography import bib_text, item, published
 from verifier.appendix.bibtex import check_bibtex, decoded, read_bibtex
+from verifier.appendix.constants import constant_remark
 from verifier.appendix.environment import environment, read_template
-from verifier.appendix.escape import ACCENTS, LETTERS, Latex, plain, tex, unprintable
+from verifier.appendix.escape import LETTERS, Latex, plain, tex, unprintable
 from verifier.appendix.maths import COMMANDS, SYMBOLS, check_head, check_maths, head
 from verifier.appendix.polynomials import polynomial
 from verifier.appendix.values import digits, rounded, short, value
+from verifier.expressions.parse import parse
 
 requires_latex = pytest.mark.skipif(
     shutil.which("pdflatex") is None and "CI" not in os.environ,
@@ -311,6 +313,24 @@ def test_paley_sums(p):
 def test_discriminants(coefficients, expected):
     found = identities.discriminant([Fraction(c) for c in coefficients])
     assert found.value == expected
+
+
+@pytest.mark.parametrize(
+    ("text", "simpler"),
+    [
+        ("n <= sqrt(3 + 2*sqrt(2))", "1 + \\sqrt{2}"),  # (1 + sqrt 2)^2 = 3 + 2 sqrt 2
+        ("1/(sqrt(5) - 2) > n", "2 + \\sqrt{5}"),  # (sqrt 5 - 2)(sqrt 5 + 2) = 1
+        ("n <= sqrt(2) + sqrt(3)", None),
+        ("n <= sqrt(p)", None),
+        ("n <= 12", None),
+        ("n <= 1/(1 - 1)", None),
+        ("n <= sqrt(2 - 3)", None),
+        ("n <= log(2)*sqrt(4)", None),
+    ],
+)
+def test_constant_bounds(text, simpler):
+    remark = constant_remark(parse(text))
+    assert (None if remark is None else remark.code.partition("=")[2]) == simpler
 
 
 def test_primes_of_a_discriminant():

@@ -41,6 +41,7 @@ ACCENTS = {
     "\u0307": ".", "\u0308": '"', "\u030a": "r", "\u030b": "H", "\u030c": "v", "\u0327": "c",
     "\u0328": "k", "\u0326": "textcommabelow",
 }  # fmt: skip
+UNBROKEN, PIECE = 20, 8
 LIGATURES = "-,'"  # doubled, each of these turns into another character
 
 
@@ -69,7 +70,7 @@ def plain(text: str) -> str:
 
 
 def tex(text: str) -> str:
-    r"""Return `text` as LaTeX that prints it.
+    r"""Return `text` as LaTeX that prints it; words of more than 20 characters may break anywhere.
 
     Raises
     ------
@@ -84,14 +85,7 @@ def tex(text: str) -> str:
     refused = unprintable(text)
     if refused is not None:
         raise ValueError(refused)
-    made: list[str] = []
-    before = ""
-    for character in plain(text):
-        if character == before and character in LIGATURES:
-            made.append("{}")
-        made.append(_set(character) or "")
-        before = character
-    return "".join(made)
+    return " ".join(map(_word, plain(text).split(" ")))
 
 
 def tex_keeping_blanks(text: str) -> str:
@@ -133,6 +127,19 @@ def accented(character: str) -> tuple[str, str] | None:
         return None
     accent = ACCENTS.get(parts[1])
     return None if accent is None else (parts[0], accent)
+
+
+def _word(word: str) -> str:
+    made: list[str] = []
+    before = ""
+    for place, character in enumerate(word):
+        if character == before and character in LIGATURES:
+            made.append("{}")
+        if len(word) > UNBROKEN and place and place % PIECE == 0:
+            made.append("\\allowbreak ")
+        made.append(_set(character) or "")
+        before = character
+    return "".join(made)
 
 
 def _set(character: str) -> str | None:

@@ -4,11 +4,12 @@ import re
 from collections.abc import Mapping, Sequence
 
 from verifier.appendix.escape import Latex, plain, tex, tex_keeping_blanks
+from verifier.appendix.values import run
 from verifier.case.case import Case, Condition
 from verifier.expressions.latex import to_latex
 from verifier.registry import PREDICATES, QUANTITIES
 
-AFTER = re.compile(r"[^-+*/^=<>,(]*(?:[<>!]=|[-+*/^=<>,(]|$)")  # up to a place to break after
+AFTER = re.compile(r"[^-+*/^=<>,(_]*(?:[<>!]=|[-+*/^=<>,(_]|$)")  # up to a place to break after
 
 
 def symbols() -> Mapping[str, str]:
@@ -47,7 +48,9 @@ class Formulas:
     def inline(self, condition: Condition) -> Latex:
         """Return an expression for running text; a long one as typed, which can break."""
         made = self.maths(condition)
-        return Latex(f"${made}$") if len(made) <= INLINE else typed(condition.text)
+        if len(made) <= SHORT:
+            return Latex(f"${made}$")
+        return Latex(f"\\primewiseinline{{{made}}}{{{typed(condition.text).code}}}")
 
     def displayed(self, condition: Condition) -> Latex:
         """Return an expression set apart: on one line, else in rows, else as typed."""
@@ -61,8 +64,8 @@ class Formulas:
         return Latex(f"\\primewiseformula{{{made}}}{{{shown}}}{{{typed(condition.text).code}}}")
 
 
-INLINE = 240
-RELATION = re.compile(r"\\(?:leq?|geq?|neq?|land|lor|wedge|vee)(?![A-Za-z])|[<>=]")
+SHORT = 16
+RELATION = re.compile(r"\\(?:le|ge|ne)(?![A-Za-z])|\\text\{ (?:and|or) \}|[<>=]")
 
 
 def rows_of(maths: str) -> list[str]:
@@ -91,6 +94,10 @@ def rows_of(maths: str) -> list[str]:
     return [piece for piece in pieces if piece]
 
 
+def _broken(piece: str) -> str:
+    return re.sub("[0-9]+", lambda found: run(found.group()), piece)
+
+
 def typed(text: str) -> Latex:
     r"""Return an expression in typewriter letters that may break at its operators.
 
@@ -99,7 +106,7 @@ def typed(text: str) -> Latex:
     >>> print(typed("n^2 + 1").code)
     \texttt{n\textasciicircum{}\allowbreak 2 + 1}
     """
-    pieces = [tex_keeping_blanks(piece) for piece in AFTER.findall(plain(text))]
+    pieces = [_broken(tex_keeping_blanks(piece)) for piece in AFTER.findall(plain(text))]
     made = "".join(
         piece if piece.endswith(" ") or following.startswith(" ") or not following
         else piece + r"\allowbreak "

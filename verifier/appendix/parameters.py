@@ -2,12 +2,15 @@
 
 from collections.abc import Mapping
 
-from verifier.appendix.escape import Latex, tex
+from verifier.appendix.escape import Latex
 from verifier.appendix.polynomials import polynomial
 from verifier.appendix.values import RATIONAL, digits
 from verifier.case.case import Family, Parameter, Polynomials, Primes, Values
+from verifier.expressions.latex import to_latex
+from verifier.expressions.tree import Name
 
 LISTED = 24
+LONGEST = 200  # as part of the place of an instance; the certificate has it in full
 
 
 def name_latex(name: str) -> str:
@@ -15,10 +18,10 @@ def name_latex(name: str) -> str:
 
     Examples
     --------
-    >>> print(name_latex("p"), name_latex("step_1"))
-    p \mathit{step\_1}
+    >>> print(name_latex("p"), name_latex("a_1"))
+    p a_{\mathrm{1}}
     """
-    return name if len(name) == 1 else rf"\mathit{{{tex(name)}}}"
+    return to_latex(Name(name), {}, {})
 
 
 def parameter_sentence(parameter: Parameter) -> Latex:
@@ -90,6 +93,8 @@ def _equation(name: str, text: str) -> str:
     if RATIONAL.fullmatch(text):
         shown = digits(text)
         return f"${name_latex(name)}={text}$" if shown == text else f"${name_latex(name)}=${shown}"
+    if len(text) > LONGEST:
+        return f"${name_latex(name)}$ of {len(text)} characters"
     shown = polynomial(text).code
     if shown.startswith("$"):
         return f"${name_latex(name)}={shown.removeprefix('$')}"

@@ -3,6 +3,7 @@ r"""Polynomials as typed, set as maths that may break between terms."""
 import re
 
 from verifier.appendix.escape import Latex, tex
+from verifier.appendix.values import run
 
 TOKEN = re.compile(r"\s*([0-9]+(?:\.[0-9]+)?|[A-Za-z][A-Za-z0-9_]*|[-+*/^()])")
 SPELT = re.compile(r"[A-Za-z][A-Za-z0-9]*")
@@ -70,4 +71,4 @@ def _exponent(lexemes: list[str], place: int) -> tuple[str, int]:
 def _atom(lexeme: str) -> str:
     if len(lexeme) > 1 and SPELT.match(lexeme):
         return rf"\mathit{{{lexeme.replace('_', chr(92) + '_')}}}"
-    return lexeme
+    return run(lexeme) if lexeme.isdigit() else lexeme

@@ -7,12 +7,13 @@ from verifier.appendix.escape import Latex, tex
 from verifier.appendix.facts import Certificate
 from verifier.appendix.maths import head
 from verifier.appendix.polynomials import polynomial
-from verifier.appendix.values import DECIMAL, RATIONAL, cell
+from verifier.appendix.values import DECIMAL, GROUP, RATIONAL, cell
 from verifier.appendix.verdicts import verdict
 from verifier.case.case import Case, Table
 
 MOST = 500
 DIFFERENCES = 50
+NARROW, WIDEST = 5, 8
 
 
 def case_tables(
@@ -48,25 +49,33 @@ def _table(
     all_rows: bool,
 ) -> dict[str, object]:
     kept = certificates if all_rows else certificates[:MOST]
-    width = f"{96 // max(1, len(table.columns)) / 100:.2f}" if table.columns else "0.96"
+    columns = min(len(table.columns), WIDEST)
+    heads_shown = [head(text) for text in table.heads] or list(fallback)
     return {
         "name": table.name,
-        "heads": [head(text) for text in table.heads] or list(fallback),
-        "rows": [[_cell(text) for text in found["tables"][table.name]] for found in kept],
+        "heads": heads_shown[:WIDEST],
+        "rows": [
+            [_cell(text, columns) for text in found["tables"][table.name][:WIDEST]]
+            for found in kept
+        ],
         "omitted": len(certificates) - len(kept),
         "verdict": verdict(judged["verdict"]),
         "expect": table.expect or "",
-        "width": Latex(width),
-        "columns": len(table.columns),
+        "width": Latex(f"0.{98 // columns:02}"),
+        "size": Latex(r"\footnotesize" if columns <= NARROW else r"\scriptsize"),
+        "columns": columns,
+        "hidden": len(table.columns) - columns,
         "differences": [_difference(one) for one in judged["differences"][:DIFFERENCES]],
         "more": max(0, len(judged["differences"]) - DIFFERENCES),
     }
 
 
-def _cell(text: str) -> Latex:
+def _cell(text: str, columns: int) -> Latex:
     if text in ("outside", "open", "true", "false"):
         return Latex(tex(text))
-    return cell(text) if DECIMAL.fullmatch(text) or RATIONAL.fullmatch(text) else polynomial(text)
+    if DECIMAL.fullmatch(text) or RATIONAL.fullmatch(text):
+        return cell(text) if columns <= NARROW else cell(text, unbroken=GROUP)
+    return polynomial(text)
 
 
 def _difference(one: Mapping[str, Any]) -> Latex:

@@ -13,32 +13,37 @@ from verifier.appendix.escape import Latex, tex
 from verifier.records import Json
 
 BREAK = "\\allowbreak "
-GROUP = 9
-UNBROKEN = 14
+GROUP = 3
+UNBROKEN = 12
+EXACT = 14  # a ratio of so many characters is printed as it is
 RATIONAL = re.compile(r"-?[0-9]+(/[0-9]+)?")
 DECIMAL = re.compile(r"-?[0-9]+(\.[0-9]+)?")
 SHORT = 6
-LONGEST = 1000
+LONGEST = 480
 
 
-def digits(text: str) -> str:
+def digits(text: str, unbroken: int = UNBROKEN) -> str:
     r"""Return digits (and a slash, a point, a sign) as LaTeX that may break in long runs.
 
     Examples
     --------
-    >>> print(digits("-5/2"), digits("12345678901234567890"))
-    $-$5/2 12\allowbreak 345678901\allowbreak 234567890
-    """
+    >>> print(digits("-5/2"), digits("12345678901234"), digits("0.12345678", unbroken=6))
+    $-$5/2 12\allowbreak 345\allowbreak 678\allowbreak 901\allowbreak 234 0.12\allowbreak 345\allowbreak 678
+    """  # noqa: E501 a result stands on one line
     sign, rest = ("$-$", text[1:]) if text.startswith("-") else ("", text)
-    broken = re.sub("[0-9]+", lambda found: _run(found.group()), rest)
-    return sign + (broken.replace("/", f"/{BREAK}") if len(rest) > UNBROKEN else broken)
+    broken = re.sub("[0-9]+", lambda found: run(found.group(), unbroken), rest)
+    return sign + (broken.replace("/", f"/{BREAK}") if len(rest) > unbroken else broken)
 
 
-def _run(run: str) -> str:
-    if len(run) <= UNBROKEN:
-        return run
-    first = len(run) % GROUP
-    groups = [run[:first], *(run[at : at + GROUP] for at in range(first, len(run), GROUP))]
+def run(figures: str, unbroken: int = UNBROKEN) -> str:
+    """Return a run of digits that may break, where it is long, into groups of three."""
+    if len(figures) <= unbroken:
+        return figures
+    first = len(figures) % GROUP
+    groups = [
+        figures[:first],
+        *(figures[at : at + GROUP] for at in range(first, len(figures), GROUP)),
+    ]
     return BREAK.join(filter(None, groups))
 
 
@@ -70,7 +75,7 @@ def short(canonical: Json) -> Latex:
     2/3 0.58141$_{1}^{2}$
     """
     if isinstance(canonical, str) and RATIONAL.fullmatch(canonical):
-        if len(canonical) <= UNBROKEN:
+        if len(canonical) <= EXACT:
             return Latex(digits(canonical))
         if len(canonical) > LONGEST:
             return _long(canonical)
@@ -130,8 +135,8 @@ def _between(lower: str, upper: str) -> Latex:
     return Latex(f"[{digits(lower)},\\allowbreak\\ {digits(upper)}]")
 
 
-def cell(text: str) -> Latex:
+def cell(text: str, unbroken: int = UNBROKEN) -> Latex:
     """Return the cell of a table: numbers as numbers, anything else as escaped text."""
     if RATIONAL.fullmatch(text) or DECIMAL.fullmatch(text):
-        return Latex(digits(text))
+        return Latex(digits(text, unbroken))
     return Latex(tex(text))

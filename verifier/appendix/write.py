@@ -7,7 +7,7 @@ from verifier import __version__
 from verifier.appendix.bibliography import Citations, bib_text, entries, item
 from verifier.appendix.construction import graph_sentences, sequence_sentences
 from verifier.appendix.environment import render
-from verifier.appendix.escape import Latex, tex
+from verifier.appendix.escape import Latex, plain, tex
 from verifier.appendix.facts import Certificate, Facts
 from verifier.appendix.formulas import Formulas, typed
 from verifier.appendix.parameters import parameter_sentence
@@ -32,6 +32,7 @@ from verifier.case.case import Case
 
 PACKAGES = ("amsmath", "amssymb", "amsthm", "booktabs", "longtable", "array", "xcolor", "url")
 LONGEST_LINE = 180
+RUNNING = 50
 CONVENTIONS = Latex(
     r"An irrational value is printed as $1.234_{5}^{6}$: it lies between $1.2345$ (below) and "
     r"$1.2346$ (above); both ends are rounded outward."
@@ -103,6 +104,7 @@ class _Printer:
             "packages": [Latex(package) for package in PACKAGES],
             "heading": Latex(r"\subsection" if self.fragment else r"\section"),
             "title": self.case.title,
+            "running": _running(self.case.title),
             "about": self.case.about,
             "cite": self.citations.cite,
             "conventions": CONVENTIONS,
@@ -163,6 +165,14 @@ class _Printer:
         ]
         widest = f"A{len(cited)}" if self.fragment else str(len(cited))
         return {"references": references, "widest": widest}
+
+
+def _running(title: str) -> Latex:
+    """Return what stands above the pages: the title, or its beginning."""
+    words = plain(title)
+    if len(words) <= RUNNING:
+        return Latex(f"{{{tex(words)}}}")
+    return Latex(f"{{{tex(words[:RUNNING].rpartition(' ')[0] or words[:RUNNING])}\\ldots}}")
 
 
 def _file(name: str, digest: str) -> dict[str, Latex]:

@@ -119,7 +119,10 @@ def _is_trivial(tree: Tree, scope: InstanceScope) -> bool:
         return False
     try:
         _, values = scope.key(*named)
-        over = compare(value(large, scope), Fraction(entry.maximum(scope.sizes, *values)))
+        most = entry.maximum(scope.sizes, *values)
+        if most is None:
+            return False
+        over = compare(value(large, scope), Fraction(most))
     except CaseError:
         raise
     except VerifierError:

@@ -1,8 +1,8 @@
 """Primes, polynomials modulo p (lists of residues, the constant first) and the stream of bits."""
 
-from collections.abc import Iterator, Mapping, Sequence
+from collections.abc import Iterator, Sequence
 from hashlib import sha256
-from itertools import count
+from itertools import count, islice
 
 from .reals import OpenError, RecheckError
 
@@ -107,3 +107,41 @@ def common_with_frobenius(f: Polynomial, p: int) -> Iterator[Polynomial]:
         power = to_the_p(power, f, p)
         padded = power + [0] * (2 - len(power))
         yield gcd(f, reduced([padded[0], padded[1] - 1, *padded[2:]], p), p)
+
+
+def squarefree(f: Polynomial, p: int) -> bool:
+    """Tell whether gcd(f, f') = 1."""
+    return len(gcd(f, reduced([i * c for i, c in enumerate(f)][1:], p), p)) == 1
+
+
+def irreducible(f: Polynomial, p: int) -> bool:
+    """Tell whether f, of degree >= 1, has no factor of a degree up to half its own (Ben-Or's test)."""
+    halves = islice(common_with_frobenius(f, p), (len(f) - 1) // 2)
+    return len(f) > 1 and all(len(common) == 1 for common in halves)
+
+
+def discriminant(f: Polynomial, p: int) -> int:
+    """Return (-1)^(k(k-1)/2) res(f, f')/a mod p, f' taken with the formal degree k - 1.
+
+    res(g, h) = (-1)^(deg g deg h) b^(deg g - deg (g mod h)) res(h, g mod h), b leading in h.
+    """
+    k, a = len(f) - 1, f[-1]
+    if k < 1:
+        raise OpenError("undefined: disc of a polynomial of degree 0")
+    g, h = f, reduced([i * c for i, c in enumerate(f)][1:], p)
+    result = (-1) ** (k * (k - 1) // 2) * pow(a, k - 1 - len(h), p)
+    while len(h) > 1:
+        rest = remainder(g, h, p)
+        result *= (-1) ** ((len(g) - 1) * (len(h) - 1)) * pow(h[-1], len(g) - len(rest), p)
+        g, h = h, rest
+    return result * pow(h[0], len(g) - 1, p) % p if h else 0
+
+
+def polynomial_text(f: Polynomial) -> str:
+    """Write a polynomial with least residues, `x^4 + 3*x^2 + 1`."""
+    terms = []
+    for i in range(len(f) - 1, -1, -1):
+        power = "x" if i == 1 else f"x^{i}"
+        if f[i]:
+            terms.append(str(f[i]) if i == 0 else power if f[i] == 1 else f"{f[i]}*{power}")
+    return " + ".join(terms) or "0"

@@ -1,0 +1,21 @@
+"""The complete character sum of f."""
+
+from fractions import Fraction
+
+from verifier.records import Measurement
+from verifier.registry import quantity
+from verifier.structures.require import character_of
+from verifier.structures.subject import Subject
+
+
+@quantity(
+    "complete_sum",
+    definition="sum over F_p of chi(f(x)), signed",
+    source="Weil1948",
+    needs="character",
+    symbol=r"\sum_{x\in\mathbb F_p}\chi(f(x))",
+    maximum=lambda sizes: Fraction(sizes.p),
+)
+def complete_sum(subject: Subject) -> Measurement:
+    """Return the sum of chi(f(x)) over F_p, in -p..p. Cost: p additions."""
+    return Measurement(character_of(subject).complete_sum)

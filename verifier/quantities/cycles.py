@@ -1,0 +1,30 @@
+"""The number of labelled cycles in a graph."""
+
+from fractions import Fraction
+from math import perm
+
+from verifier.errors import CaseError
+from verifier.records import Measurement
+from verifier.registry import quantity
+from verifier.structures.require import graph_of, pair_cost
+from verifier.structures.subject import Subject
+
+
+@quantity(
+    "cycles",
+    definition="number of labelled t-cycles (injective maps of the cycle C_t)",
+    source="ChungGrahamWilson1989",
+    needs="graph",
+    symbol=r"N_G(C_{{0}})",
+    arguments=("order",),
+    orders=(4,),
+    maximum=lambda sizes, t: Fraction(perm(sizes.n, t)),
+    cost=lambda sizes, _: pair_cost(sizes),
+)
+def cycles(subject: Subject, length: int) -> Measurement:
+    """Return the closed 4-walks that do not turn back: tr A^4 - sum d (2 d - 1)."""
+    if length != 4:
+        raise CaseError(f"cycles({length}) is not supported; known orders: 4")
+    graph = graph_of(subject)
+    back_and_forth = sum(d * (2 * d - 1) for d in graph.degrees.tolist())
+    return Measurement(graph.pairs.square_sum - back_and_forth)
