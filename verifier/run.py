@@ -180,7 +180,7 @@ def _contents(
         for table in case.tables
     }
     found |= rechecker_files()
-    found["references.bib"] = bibliography_text(case).encode()
+    found["references.bib"] = bibliography_text(case, summary, certificates).encode()
     text = _appendix(case, certificates, summary, found, all_rows=all_rows, fragment=False)
     found["appendix.tex"] = text.encode()
     return found

@@ -9,6 +9,7 @@ from verifier.appendix.environment import read_template
 from verifier.appendix.escape import Latex, accented, tex
 from verifier.case.case import Case
 
+COMMON = "common-practice"  # the source of what no paper introduced
 HARD_AND = "\u00a0and\u00a0"  # inside one name, where it separates no authors
 
 
@@ -67,13 +68,15 @@ class Citations:
         return sorted((self.known[key] for key in self.keys), key=_by_author)
 
     def source(self, text: str) -> Latex:
-        r"""Return a `source` of the registries, whose leading words may be a key of a source.
+        r"""Return a `source` of the registries: a key and a place, or words; none if common.
 
         Examples
         --------
         >>> print(Citations(published()).source("Weil1948, chapter 2").code)
         \cite[{chapter 2}]{Weil1948}
         """
+        if text == COMMON:
+            return Latex("")
         pieces = [self._piece(piece.strip()) for piece in text.split(";")]
         return Latex("; ".join(pieces))
 

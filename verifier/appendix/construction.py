@@ -37,7 +37,8 @@ def sequence_sentences(case: Case, cite: Cite, source: Callable[[str], Latex]) -
 def _rule(case: Case, table: SequenceTable, cite: Cite, source: Callable[[str], Latex]) -> Latex:
     name = f"appendix/rules/{table.rule}.tex.jinja"
     entry = RULES.entries.get(table.rule)
-    after = f" See {source(entry.source).code}." if entry is not None and entry.source else ""
+    origin = source(entry.source).code if entry is not None else ""
+    after = f" See {origin}." if origin else ""
     if has_template(name):
         made = render(
             name,

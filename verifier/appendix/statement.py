@@ -64,7 +64,8 @@ def _entry_row(
         letters.append(LETTERS[kind][counts.get(kind, 0)])
         counts[kind] = counts.get(kind, 0) + 1
     symbol = formulas.symbol(entry.name, letters)
-    source = f" {citations.source(entry.source).code}." if entry.source else ""
+    origin = citations.source(entry.source).code
+    source = f" See {origin}." if origin else ""
     meaning = tex(entry.definition).rstrip(".")
     call = f"{entry.name}({', '.join(letters)})" if letters else entry.name
     return {
