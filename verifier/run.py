@@ -15,7 +15,7 @@ from verifier.case.read import build_case, read_case
 from verifier.certificate import canonical_text, digest
 from verifier.errors import CaseError
 from verifier.instance.certify import certify
-from verifier.instance.conditions import kept, refuse_undefined
+from verifier.instance.conditions import kept, refuse_before_building
 from verifier.plan import Plan, make_plan
 from verifier.pool import certify_all
 from verifier.progress import Progress
@@ -77,7 +77,7 @@ def check_case(case: Case, folder: Path, jobs: int, progress: Progress) -> dict[
     check_target(folder)
     plan = _plan(case)
     found = combinations(case, lambda made: kept(case, made))
-    refuse_undefined(case, found)
+    refuse_before_building(case, found)
     certificates, tightest = certify_all(plan, found, jobs, progress)
     summary = summarise(case, certificates, tightest)
     write_results(folder, _contents(case, certificates, summary))

@@ -85,7 +85,7 @@ def tex(text: str) -> str:
     refused = unprintable(text)
     if refused is not None:
         raise ValueError(refused)
-    return " ".join(map(_word, plain(text).split(" ")))
+    return " ".join(map(_word, plain(text).split(" "))).replace("...", r"\ldots{}")
 
 
 def tex_keeping_blanks(text: str) -> str:

@@ -5,6 +5,7 @@ from typing import Any
 
 from verifier.appendix.bibliography import Citations
 from verifier.appendix.constants import constant_remark
+from verifier.appendix.environment import has_template, render
 from verifier.appendix.escape import Latex, tex
 from verifier.appendix.facts import Facts, base
 from verifier.appendix.formulas import Formulas, typed
@@ -66,12 +67,20 @@ def _entry_row(
     symbol = formulas.symbol(entry.name, letters)
     origin = citations.source(entry.source).code
     source = f" See {origin}." if origin else ""
-    meaning = tex(entry.definition).rstrip(".")
+    meaning = _meaning(entry)
     call = f"{entry.name}({', '.join(letters)})" if letters else entry.name
     return {
         "symbol": Latex(f"${symbol}$"),
         "meaning": Latex(f"{meaning}.{source} In the case file: {typed(call).code}."),
     }
+
+
+def _meaning(entry: Quantity | Predicate) -> str:
+    """Return the definition as maths where there is a template for it, else in its own words."""
+    name = f"appendix/quantities/{entry.name}.tex.jinja"
+    if has_template(name):
+        return render(name).code.strip()
+    return tex(entry.definition).rstrip(".")
 
 
 def hypotheses(case: Case, formulas: Formulas) -> list[dict[str, Latex]]:

@@ -5,7 +5,9 @@ from dataclasses import dataclass, field
 
 from verifier.case.case import Family, GraphTable, Parameter, Polynomials, SequenceTable
 from verifier.errors import ExpressionError
+from verifier.expressions.names import names as mentioned
 from verifier.expressions.parse import check_exponents
+from verifier.expressions.polynomial import coefficients
 from verifier.expressions.tree import (
     And,
     Binary,
@@ -143,6 +145,11 @@ def check_polynomial(tree: Tree, names: Names, text: str, *, among_polynomials: 
     """
     known = {"x", *names.numbers, *(names.polynomials if among_polynomials else ())}
     _polynomial(tree, known, text)
+    if mentioned(tree) <= {"x"}:
+        try:
+            coefficients(tree, {})
+        except ExpressionError as problem:
+            raise ExpressionError(text, 0, problem.problem) from problem
 
 
 def _polynomial(tree: Tree, known: set[str], text: str) -> None:

@@ -8,7 +8,7 @@ from itertools import islice, product
 from flint import nmod_poly
 
 from verifier.case.case import Case, Family, Parameter, Polynomials, Primes, Values
-from verifier.errors import CaseError
+from verifier.errors import CaseError, ExpressionError
 from verifier.exact.primes import prime_powers_between, primes_between
 from verifier.exact.stream import bits
 from verifier.expressions.polynomial import coefficients, polynomial_text
@@ -106,7 +106,11 @@ def _with_listed(case: Case, made: Combination) -> Combination:
     for parameter in case.parameters:
         if isinstance(parameter, Polynomials):
             tree = parameter.trees[parameter.texts.index(made.texts[parameter.name])]
-            found[parameter.name] = coefficients(tree, names)
+            try:
+                found[parameter.name] = coefficients(tree, names)
+            except ExpressionError as problem:
+                text = made.texts[parameter.name]
+                raise CaseError(f"[parameters] {parameter.name}: {text}: {problem}") from problem
     return replace(made, polynomials=found)
 
 

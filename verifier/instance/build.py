@@ -8,7 +8,7 @@ from typing import Any
 from verifier.case.case import Case, Condition, Setting
 from verifier.case.combinations import Combination
 from verifier.certificate import digest
-from verifier.errors import CaseError, OutsideError
+from verifier.errors import CaseError, ExpressionError, OutsideError
 from verifier.exact.decide import rational_value
 from verifier.expressions.evaluate import value
 from verifier.expressions.polynomial import coefficients, polynomial_text, reduce
@@ -93,7 +93,10 @@ def polynomial_at(case: Case, combination: Combination) -> tuple[int, ...] | Non
     if not isinstance(setting, Condition) or combination.p is None:
         return None
     numbers = {name: Fraction(number) for name, number in combination.numbers.items()}
-    rational = coefficients(setting.tree, {**numbers, **combination.polynomials})
+    try:
+        rational = coefficients(setting.tree, {**numbers, **combination.polynomials})
+    except ExpressionError as problem:
+        raise CaseError(f"[sequence] polynomial: {setting.text}: {problem}") from problem
     residues = reduce(rational, combination.p)
     if not residues:
         raise OutsideError(f"f vanishes identically modulo {combination.p}")

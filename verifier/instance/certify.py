@@ -12,6 +12,7 @@ from verifier.expressions.evaluate import value
 from verifier.instance.build import Built, build
 from verifier.instance.cells import cell
 from verifier.instance.claims import judge_claim, outside_entry
+from verifier.instance.conditions import refuse_before_measuring
 from verifier.instance.scope import WITHOUT_VALUE, InstanceScope
 from verifier.plan import Plan
 from verifier.records import Finding, Json, Measurement
@@ -45,6 +46,7 @@ def certify(plan: Plan, combination: Combination, index: int) -> Certified:
     }
     if built.outside is not None:
         return {**certificate, **_outside(plan, combination, built.outside)}, {}
+    refuse_before_measuring(plan.case, combination, scope)
     quantities, witnesses = _measured(plan, scope)
     ratios: dict[str, Real] = {}
     claims: dict[str, Any] = {}

@@ -1,11 +1,11 @@
 """What is decided about a combination before anything is measured."""
 
-from collections.abc import Iterator, Sequence
+from collections.abc import Iterator, Sequence, Set
 
 from verifier.case.case import Case, Condition
 from verifier.case.combinations import Combination
 from verifier.errors import CaseError, OutsideError, UndefinedError, VerifierError
-from verifier.expressions.evaluate import judge, value
+from verifier.expressions.evaluate import Scope, judge, value
 from verifier.expressions.names import closed_parts
 from verifier.instance.build import polynomial_at
 from verifier.instance.parameters import ParameterScope
@@ -44,36 +44,52 @@ def _true(condition: Condition, scope: InstanceScope) -> bool:
     return judged.verdict == "holds"
 
 
-def refuse_undefined(case: Case, combinations: Sequence[Combination]) -> None:
-    """Refuse a claim or table whose parts in parameters alone have no value somewhere.
+def refuse_undefined(case: Case, combination: Combination, scope: Scope, names: Set[str]) -> None:
+    """Refuse a claim or table whose parts in `names` alone have no value at a combination.
 
-    Instances that a condition in parameters alone puts outside are not asked.
+    Claims that a condition in these names alone puts outside are not asked.
+
+    Parameters
+    ----------
+    case, combination
+        The instance.
+    scope
+        Gives the values of the names.
+    names
+        Parameters and sizes: what is known without measuring anything.
 
     Raises
     ------
     CaseError
         Naming the first such part and where it has no value.
     """
+    for label, condition in _asked(case, scope, names):
+        for part in closed_parts(condition.expanded, names):
+            try:
+                value(part, scope)
+            except UndefinedError as problem:
+                where = ", ".join(f"{name} = {text}" for name, text in combination.texts.items())
+                place = f" at {where}" if where else ""
+                raise CaseError(f"{label}: {condition.text} is {problem}{place}") from problem
+            except CaseError as problem:
+                raise CaseError(f"{label}: {condition.text}: {problem}") from problem
+            except VerifierError:
+                continue
+
+
+def refuse_before_building(case: Case, combinations: Sequence[Combination]) -> None:
+    """Refuse undefined parts in parameters alone, for all combinations, before any is built."""
     for combination in combinations:
-        scope = ParameterScope(combination)
         names = {*combination.numbers, *(("p", "q") if combination.p else ())}
-        for label, condition in _asked(case, scope, names):
-            for part in closed_parts(condition.expanded, frozenset(names)):
-                try:
-                    value(part, scope)
-                except UndefinedError as problem:
-                    where = ", ".join(f"{k} = {v}" for k, v in combination.texts.items())
-                    place = f" at {where}" if where else ""
-                    raise CaseError(f"{label}: {condition.text} is {problem}{place}") from problem
-                except CaseError as problem:
-                    raise CaseError(f"{label}: {condition.text}: {problem}") from problem
-                except VerifierError:
-                    continue
+        refuse_undefined(case, combination, ParameterScope(combination), names)
 
 
-def _asked(
-    case: Case, scope: ParameterScope, names: set[str]
-) -> Iterator[tuple[str, Condition]]:
+def refuse_before_measuring(case: Case, combination: Combination, scope: InstanceScope) -> None:
+    """Refuse undefined parts in parameters and sizes, before anything is measured."""
+    refuse_undefined(case, combination, scope, {*combination.numbers, *scope.known})
+
+
+def _asked(case: Case, scope: Scope, names: Set[str]) -> Iterator[tuple[str, Condition]]:
     for claim in case.claims:
         if all(_may_hold(condition, scope, names) for condition in claim.given):
             yield f"claim {claim.name}", claim.says
@@ -84,9 +100,9 @@ def _asked(
             yield f"table {table.name}", column
 
 
-def _may_hold(condition: Condition, scope: ParameterScope, names: set[str]) -> bool:
-    """Return False where a condition in parameters alone is false."""
-    parts = closed_parts(condition.expanded, frozenset(names), conditions=True)
+def _may_hold(condition: Condition, scope: Scope, names: Set[str]) -> bool:
+    """Return False where a condition in the names alone is false."""
+    parts = closed_parts(condition.expanded, names, conditions=True)
     if condition.expanded not in parts:
         return True
     return judge(condition.expanded, scope).verdict != "fails"

@@ -1,68 +1,101 @@
-"""Graphs as rows of bits (one Python integer a vertex), and the readers of graph files."""
+"""Graphs: circulants by their row, all others by their matrix; and the readers of graph files."""
 
 import re
-from collections.abc import Iterable, Iterator
+from collections.abc import Iterable, Sequence
 
 from .reals import RecheckError
 
-Defect = tuple[tuple[int, int], str]
+Matrix = Sequence[Sequence[int]]
 
 
 class Graph:
-    """A matrix: the first row of a circulant, or rows of bits; with what keeps it from a graph."""
+    """A matrix by its rows (of a circulant the first alone), and the pairs that spoil a graph."""
 
-    def __init__(self, n: int, kind: str, row: list[int], rows: list[int]) -> None:
-        self.n, self.kind, self.row, self.rows = n, kind, row, rows
-        self.degrees = [sum(row)] * n if row else [bits.bit_count() for bits in rows]
-        self.defects: dict[str, Defect] = {}  # predicate -> least pair that shows it false, in words
-        loop = next((i for i, bits in enumerate(rows) if bits >> i & 1), -1)
-        if loop >= 0:
-            self.note("zero_diagonal", loop, loop, f"not zero on the diagonal: a({loop},{loop}) = 1")
+    def __init__(self, kind: str, n: int, rows: Matrix) -> None:
+        self.kind, self.n, self.row = kind, n, rows[0]
+        self.defects: dict[str, tuple[tuple[int, int], str]] = {}
+        what = "row" if kind == "circulant" else "matrix"
+        columns = (
+            list(zip(*rows, strict=True))
+            if kind != "circulant"
+            else [[*rows[0][:1], *rows[0][:0:-1]]]
+        )
+        for i, (row, column) in enumerate(zip(rows, columns, strict=True)):
+            for j in range(n) if set(row) - {0, 1} else ():
+                if row[j] not in (0, 1):
+                    self._note("zero_one", i, j, f"an entry is not 0 or 1: a({i},{j}) = {row[j]}")
+            if row[i]:
+                self._note(
+                    "zero_diagonal", i, i, f"not zero on the diagonal: a({i},{i}) = {row[i]}"
+                )
+            if tuple(row) != tuple(column):
+                j = next(j for j in range(n) if row[j] != column[j])
+                pair = f"a({i},{j}) = {row[j]} and a({j},{i}) = {column[j]}"
+                self._note("symmetric", i, j, f"the {what} is not symmetric: {pair}")
+        bits = [] if self.defects else ["".join(map(str, row)) for row in rows]
+        self.bits = [int(row, 2) for row in bits]
+        self.degrees = [row.bit_count() for row in self.bits] * (n // len(rows))
 
-    def note(self, predicate: str, i: int, j: int, words: str) -> None:
-        """Record that a predicate is false, by the entry (i, j)."""
-        self.defects[predicate] = ((i, j), words)
-
-
-def unsymmetric(graph: Graph, what: str, i: int, j: int, entries: tuple[int, int]) -> None:
-    """Record that a_ij and a_ji differ."""
-    a, b = entries
-    words = f"the {what} is not symmetric: a({i},{j}) = {a} and a({j},{i}) = {b}"
-    graph.note("symmetric", i, j, words)
-
-
-def circulant(signs: list[int]) -> Graph:
-    """Return the circulant with z_0 = 0 and z_x = (1 + e_x)/2."""
-    z, n = [0] + [(1 + e) // 2 for e in signs[1:]], len(signs)
-    graph = Graph(n, "circulant", z, [])
-    d = next((d for d in range(1, n) if z[d] != z[n - d]), 0)
-    if d:
-        unsymmetric(graph, "row", 0, d, (z[d], z[n - d]))
-    return graph
-
-
-def cayley_sum(signs: list[int]) -> Graph:
-    """Return the graph with a_ij = (1 + e_(i+j mod n))/2 off the diagonal."""
-    n = len(signs)
-    twice = sum(1 << x for x in range(2 * n) if signs[x % n] == 1)
-    rows = [(twice >> i) % (1 << n) & ~(1 << i) for i in range(n)]
-    return Graph(n, "cayley-sum", [], rows)
+    def _note(self, predicate: str, i: int, j: int, words: str) -> None:
+        self.defects.setdefault(predicate, ((i, j), words))
 
 
-def _matrix(text: str) -> Graph:
-    lines = [re.split(r"[\s,]+", line.strip().strip(",")) for line in text.splitlines() if line.strip()]
-    entries = [
-        tuple(map(int, row[0] if len(row) == 1 and set(row[0]) <= set("01") else row)) for row in lines
-    ]
-    n = len(entries)
-    if any(len(row) != n for row in entries):
-        raise RecheckError("the matrix is not square")
-    bits = [sum(1 << j for j, a in enumerate(row) if a) for row in entries]
-    graph = Graph(n, "file", [], bits)
-    for i, row in enumerate(entries):
-        if "zero_one" not in graph.defects and not set(row) <= {0, 1}:
-            j = next(j for j, a in enumerate(row) if a not in (0, 1))
-            graph.note("zero_one", i, j, f"an entry is not 0 or 1: a({i},{j}) = {row[j]}")
-        if "zero_diagonal" not in graph.defects or row[i] == ...:
-            pass
-    return graph
+def make_graph(kind: str, signs: list[int]) -> Graph:
+    """Return the circulant or Cayley sum graph of a sequence."""
+    n, z = len(signs), [(1 + e) // 2 for e in signs]
+    if kind == "circulant":
+        return Graph(kind, n, [[0, *z[1:]]])
+    if kind != "cayley-sum":
+        raise RecheckError(f"this re-checker does not know the graph kind {kind!r}")
+    return Graph(
+        kind,
+        n,
+        [bytes(z[i:] + z[:i])[:i] + b"\0" + bytes(z[i:] + z[:i])[i + 1 :] for i in range(n)],
+    )
+
+
+def read_graph(content: bytes, form: str) -> Graph:
+    """Read graph6, sparse6 (B. McKay, formats.txt of nauty), an edge list or a matrix."""
+    text = content.decode().strip()
+    if form == "matrix":
+        lines = [re.findall(r"[^\s,]+", line) for line in text.splitlines() if line.strip()]
+        cells = [
+            line[0] if len(line) == 1 and not set(line[0]) - {"0", "1"} else line for line in lines
+        ]
+        return Graph("file", len(cells), [[int(cell) for cell in row] for row in cells])
+    if form == "edge-list":
+        lines = [
+            line.split() for line in text.splitlines() if line.strip() and line.strip()[0] != "#"
+        ]
+        pairs = [(int(i), int(j)) for i, j in lines]
+        n = len({i for pair in pairs for i in pair})
+        return _undirected(n, pairs)
+    text = text.removeprefix(f">>{form}<<").removeprefix(":")
+    data = [ord(letter) - 63 for letter in text]
+    start, length = (0, 1) if data[0] < 63 else (1, 3) if data[1] < 63 else (2, 6)
+    bits = "".join(f"{number:06b}" for number in data)
+    n = int(bits[6 * start : 6 * (start + length)], 2)
+    bits = bits[6 * (start + length) :]
+    if set(data) - set(range(64)) or n > 3000:
+        raise RecheckError("a graph file cannot be read or has more than 3000 vertices")
+    if form == "graph6":
+        pairs = [(i, j) for j in range(n) for i in range(j)]
+        if len(bits) != -(-len(pairs) // 6) * 6:
+            raise RecheckError("a graph6 file of wrong length")
+        return _undirected(n, [pair for pair, bit in zip(pairs, bits, strict=False) if bit == "1"])
+    k, v, pairs = (n - 1).bit_length(), 0, []
+    for place in range(0, len(bits) - k, k + 1):
+        v, x = v + (bits[place] == "1"), int(bits[place + 1 : place + 1 + k] or "0", 2)
+        if max(v, x) >= n:
+            break
+        if x <= v:
+            pairs.append((x, v))
+        v = max(x, v)
+    return _undirected(n, pairs)
+
+
+def _undirected(n: int, pairs: Iterable[tuple[int, int]]) -> Graph:
+    rows = [bytearray(n) for _ in range(n)]
+    for i, j in pairs:
+        rows[i][j] = rows[j][i] = 1
+    return Graph("file", n, rows)
