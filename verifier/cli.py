@@ -17,6 +17,11 @@ from verifier import __version__
 from verifier.errors import CaseError, ToolError, VerifierError
 
 INPUT, UNDECIDED, FAILS, TOOL, INTERRUPTED = 2, 3, 4, 6, 130
+STRUCTURE = (
+    "zero_one",
+    "zero_diagonal",
+    "symmetric",
+)  # always measured, shown where not as it should be
 STATUS = {"holds": 0, "outside": 0, "open": UNDECIDED, "fails": FAILS}
 
 CAUTIONS = """A finite check is no proof beyond its range. Theorems that are cited are cited, not
@@ -73,14 +78,19 @@ def main() -> None:
 
 
 @main.command(epilog=CAUTIONS)
-@click.argument("cases", nargs=-1, required=True, metavar="CASE...", type=click.Path(path_type=Path))
+@click.argument(
+    "cases", nargs=-1, required=True, metavar="CASE...", type=click.Path(path_type=Path)
+)
 @click.option(
     "--out",
     type=click.Path(path_type=Path),
     help="Results folder (several cases: the folder of their folders). Default: results/CASE.",
 )
 @click.option(
-    "--jobs", type=click.IntRange(1, 512), default=None, help="Worker processes. Default: the cores."
+    "--jobs",
+    type=click.IntRange(1, 512),
+    default=None,
+    help="Worker processes. Default: the cores.",
 )
 @click.option("--json", "as_json", is_flag=True, help="Print summary.json, one line a case.")
 @_guarded
@@ -130,6 +140,11 @@ def measure(
         return
     instance = summary["instances"][0]
     for name, value in instance["quantities"].items():
+        if name in STRUCTURE and value is True and name not in quantities:
+            continue
+        if value is None:
+            click.echo(f"{name} has no value here")
+            continue
         witness = instance["witnesses"].get(name)
         where = f"  attained at ({', '.join(witness)})" if witness else ""
         click.echo(f"{name} = {number(value)}{where}")
@@ -137,7 +152,9 @@ def measure(
 
 @main.command()
 @click.argument("results", type=click.Path(path_type=Path))
-@click.option("--fragment", is_flag=True, help="Also write fragment.tex, to be input after \\appendix.")
+@click.option(
+    "--fragment", is_flag=True, help="Also write fragment.tex, to be input after \\appendix."
+)
 @click.option("--pdf", is_flag=True, help="Also compile appendix.pdf (needs pdflatex).")
 @click.option("--rows", type=click.Choice(["all"]), help="Print every certificate, however many.")
 @_guarded

@@ -76,7 +76,7 @@ class LimitError(VerifierError):
 
 
 class OutsideError(VerifierError):
-    """The thing spoken of does not exist at an instance, such as the edges of an unsymmetric row."""
+    """The thing spoken of does not exist at an instance: edges of an unsymmetric row."""
 
 
 class ToolError(VerifierError):

@@ -13,7 +13,7 @@ from verifier import catalogue
 from verifier.case.combinations import Combination
 from verifier.errors import UndecidedError, VerifierError
 from verifier.exact.decide import compare
-from verifier.exact.reals import Real
+from verifier.exact.nodes import Real
 from verifier.instance.certify import Certified, certify
 from verifier.plan import Plan
 from verifier.progress import Progress
@@ -58,9 +58,7 @@ def _exceeds(ratio: Real, largest: Real) -> bool:
         return False
 
 
-def _certified(
-    plan: Plan, combinations: Sequence[Combination], jobs: int
-) -> Iterator[Certified]:
+def _certified(plan: Plan, combinations: Sequence[Combination], jobs: int) -> Iterator[Certified]:
     numbered = list(enumerate(combinations))
     large = any((made.p or 0) > LARGE_FIELD for made in combinations)
     if jobs == 1 or len(numbered) == 1 or (len(numbered) < SMALL and not large):
@@ -78,7 +76,9 @@ def _in_pool(plan: Plan, batches: Sequence[Batch], jobs: int) -> Iterator[Certif
         try:
             waiting: list[Future[list[Certified]]] = []
             rest = iter(batches)
-            waiting.extend(pool.submit(_certify_batch, batch) for batch in islice(rest, AHEAD * jobs))
+            waiting.extend(
+                pool.submit(_certify_batch, batch) for batch in islice(rest, AHEAD * jobs)
+            )
             while waiting:
                 yield from waiting.pop(0).result()
                 waiting.extend(pool.submit(_certify_batch, batch) for batch in islice(rest, 1))

@@ -33,10 +33,10 @@ class Finding:
 
 @dataclass(frozen=True)
 class Sizes:
-    """The sizes that trivial maxima and costs depend on: vertices, terms, characteristic (0: none)."""
+    """What trivial maxima and costs depend on: vertices, terms, characteristic (0: none)."""
 
     n: int
-    N: int  # noqa: N815 the letter of the definitions
+    N: int
     p: int
 
 

@@ -64,7 +64,7 @@ class Quantity:
     arguments: tuple[ArgumentKind, ...]
     orders: tuple[int, ...]
     witness: tuple[str, ...]
-    maximum: Callable[..., Fraction] | None
+    maximum: Callable[..., Fraction | None] | None
     cost: Callable[..., Cost]
 
 
@@ -82,17 +82,17 @@ class Predicate:
     witness: tuple[str, ...]
 
 
-E_co = TypeVar("E_co", Rule, GraphKind, Quantity, Predicate)
+Item = TypeVar("Item", Rule, GraphKind, Quantity, Predicate)
 
 
 @dataclass
-class Registry(Generic[E_co]):
+class Registry(Generic[Item]):
     """The entries of one kind by name, in the order of their names."""
 
     kind: str
-    entries: dict[str, E_co] = field(default_factory=dict)
+    entries: dict[str, Item] = field(default_factory=dict)
 
-    def enter(self, entry: E_co) -> None:
+    def enter(self, entry: Item) -> None:
         """Enter `entry` under its name.
 
         Raises
@@ -104,7 +104,7 @@ class Registry(Generic[E_co]):
             raise CaseError(f"{self.kind} {entry.name} is registered twice")
         self.entries[entry.name] = entry
 
-    def find(self, name: str) -> E_co:
+    def find(self, name: str) -> Item:
         """Return the entry called `name`.
 
         Raises
@@ -180,7 +180,7 @@ def quantity(  # noqa: PLR0913 an entry has that many facts, all by keyword
     arguments: tuple[ArgumentKind, ...] = (),
     orders: tuple[int, ...] = (),
     witness: tuple[str, ...] = (),
-    maximum: Callable[..., Fraction] | None = None,
+    maximum: Callable[..., Fraction | None] | None = None,
     cost: Callable[..., Cost] = _linear,
 ) -> Callable[[Callable[..., Measurement]], Callable[..., Measurement]]:
     """Enter the decorated function as a quantity.
@@ -208,8 +208,17 @@ def quantity(  # noqa: PLR0913 an entry has that many facts, all by keyword
     def enter(function: Callable[..., Measurement]) -> Callable[..., Measurement]:
         QUANTITIES.enter(
             Quantity(
-                name, function, definition, source, needs, symbol, arguments, orders, witness,
-                maximum, cost,
+                name,
+                function,
+                definition,
+                source,
+                needs,
+                symbol,
+                arguments,
+                orders,
+                witness,
+                maximum,
+                cost,
             )
         )
         return function

@@ -53,11 +53,14 @@ def _accent(verdict: str, emphasise: Emphasis) -> str:
 
 def _claim(claim: Mapping[str, Any], emphasise: Emphasis) -> str:
     pieces = [_accent(claim["verdict"], emphasise)]
-    counts = [f"{claim[word]} {word}" for word in ("holds", "fails", "open", "outside") if claim[word]]
+    counts = [
+        f"{claim[word]} {word}" for word in ("holds", "fails", "open", "outside") if claim[word]
+    ]
     pieces.append(", ".join(counts))
     if claim["tightest"] is not None:
         pieces.append(
-            f"tightest {number(claim['tightest']['ratio'])} at {place(claim['tightest']['parameters'])}"
+            f"tightest {number(claim['tightest']['ratio'])} "
+            f"at {place(claim['tightest']['parameters'])}"
         )
     if claim["trivial"]:
         pieces.append(
@@ -124,7 +127,7 @@ def place(parameters: Mapping[str, str]) -> str:
     return ", ".join(f"{name} = {text}" for name, text in parameters.items()) or "the one instance"
 
 
-def number(value: str | Mapping[str, str] | bool | None) -> str:
+def number(value: str | Mapping[str, str] | bool | None) -> str:  # noqa: FBT001 a JSON value
     """Return a canonical value for reading: an enclosure by its ends.
 
     Examples

@@ -30,7 +30,6 @@ from verifier.results import (
 from verifier.summary import summarise, table_text
 
 
-
 def read_all(paths: Sequence[Path]) -> list[Case]:
     """Read every case before the first is run.
 
@@ -49,7 +48,7 @@ def read_all(paths: Sequence[Path]) -> list[Case]:
             problems.extend(problem.problems)
     names = [case.name for case in cases]
     for name in {name for name in names if names.count(name) > 1}:
-        problems.append(f"two cases are called {name}; their results would lie in one folder")
+        problems += [f"two cases are called {name}; their results would lie in one folder"]
     if problems:
         raise CaseError(*problems)
     return cases
@@ -98,9 +97,7 @@ def measure_one(rule: str, settings: Sequence[str], quantities: Sequence[str]) -
     return summarise(case, [certificate], {})
 
 
-def write_appendix(
-    folder: Path, *, fragment: bool, pdf: bool, all_rows: bool
-) -> Iterator[Path]:
+def write_appendix(folder: Path, *, fragment: bool, pdf: bool, all_rows: bool) -> Iterator[Path]:
     """Write the appendix of a results folder anew; yield what was written."""
     catalogue.load()
     case, certificates, summary = _read_results(folder)
@@ -186,7 +183,7 @@ def _contents(
     return found
 
 
-def _appendix(  # noqa: PLR0913 what is printed and how
+def _appendix(
     case: Case,
     certificates: Sequence[Mapping[str, Any]],
     summary: Mapping[str, Any],
@@ -196,9 +193,7 @@ def _appendix(  # noqa: PLR0913 what is printed and how
     fragment: bool,
 ) -> str:
     digests = {name: digest(data) for name, data in contents.items() if name != "appendix.tex"}
-    return appendix_text(
-        case, summary, certificates, digests, fragment=fragment, all_rows=all_rows
-    )
+    return appendix_text(case, summary, certificates, digests, fragment=fragment, all_rows=all_rows)
 
 
 def _read_results(folder: Path) -> tuple[Case, list[dict[str, Any]], dict[str, Any]]:
@@ -261,5 +256,3 @@ def _toml_value(given: str) -> str:
     except tomllib.TOMLDecodeError:
         return json.dumps(given)
     return given if type(parsed) is int else json.dumps(given)
-
-

@@ -71,9 +71,7 @@ def _claim_summary(
     name: str, certificates: Sequence[Certificate], tightest: int | None
 ) -> dict[str, Any]:
     judged = [found["claims"][name] for found in certificates]
-    counts = {
-        verdict: sum(one["verdict"] == verdict for one in judged) for verdict in WORST_FIRST
-    }
+    counts = {verdict: sum(one["verdict"] == verdict for one in judged) for verdict in WORST_FIRST}
     failing = [
         found["parameters"]
         for found, one in zip(certificates, judged, strict=True)
@@ -117,9 +115,7 @@ def _holds_from(certificates: Sequence[Certificate], name: str) -> str | None:
     return str(min(good)) if good else None
 
 
-def _table_summary(
-    case: Case, table: Table, certificates: Sequence[Certificate]
-) -> dict[str, Any]:
+def _table_summary(case: Case, table: Table, certificates: Sequence[Certificate]) -> dict[str, Any]:
     computed = table_rows(table, certificates)[1:]
     differences: list[dict[str, Any]] = []
     if table.expect is not None:
@@ -137,7 +133,7 @@ def read_rows(data: bytes) -> list[list[str]]:
 
 
 def _differences(printed: list[list[str]], computed: list[list[str]]) -> list[dict[str, Any]]:
-    """Return every cell that differs, rows and columns counted from 1; None where one is missing."""
+    """Return every cell that differs, counted from 1; None where one is missing."""
     found: list[dict[str, Any]] = []
     for row in range(max(len(printed), len(computed))):
         left = printed[row] if row < len(printed) else []
@@ -146,6 +142,11 @@ def _differences(printed: list[list[str]], computed: list[list[str]]) -> list[di
             cells = [side[column] if column < len(side) else None for side in (left, right)]
             if cells[0] != cells[1]:
                 found.append(
-                    {"row": row + 1, "column": column + 1, "printed": cells[0], "computed": cells[1]}
+                    {
+                        "row": row + 1,
+                        "column": column + 1,
+                        "printed": cells[0],
+                        "computed": cells[1],
+                    }
                 )
     return found

@@ -28,7 +28,17 @@ requires_latex = pytest.mark.skipif(
 )
 
 # names as their bearers, all long dead, wrote them
-NAMES = ["Erdős", "Rényi", "Gödel", "Čebyšëv", "Łukasiewicz", "Şükrü", "Ångström", "Bjørn", "Țițeica"]
+NAMES = [
+    "Erdős",
+    "Rényi",
+    "Gödel",
+    "Čebyšëv",
+    "Łukasiewicz",
+    "Şükrü",
+    "Ångström",
+    "Bjørn",
+    "Țițeica",
+]
 
 
 def latex_log(folder, body, name="page"):
@@ -70,7 +80,7 @@ def test_blank_lines_and_direction_marks_go():
 def test_no_special_character_survives_unescaped():
     made = tex("".join(map(chr, range(32, 127))))
     bare = re.sub(r"\\[A-Za-z]+(\{\})?|\\[{}$&#%_]|\{`\}|\{\}", "", made)
-    assert not set(bare) & set("\\{}$&#%_~^<>|\"`")
+    assert not set(bare) & set('\\{}$&#%_~^<>|"`')
 
 
 @requires_latex
@@ -157,20 +167,26 @@ def test_templates_print_integers_text_and_latex_only():
         environment().from_string("\\VAR{thing ~ 'x'}").render(thing=Latex("a"))
 
 
-@pytest.mark.parametrize("name", ["../README.md", "/etc/passwd", "appendix/../sources.bib", "", "a//b"])
+@pytest.mark.parametrize(
+    "name", ["../README.md", "/etc/passwd", "appendix/../sources.bib", "", "a//b"]
+)
 def test_templates_lie_in_their_folder(name):
     with pytest.raises(TemplateNotFound):
         read_template(name)
 
 
-@pytest.mark.parametrize("text", ["-7", "123456789012345678901234567890", "-98765432109876543210/17"])
+@pytest.mark.parametrize(
+    "text", ["-7", "123456789012345678901234567890", "-98765432109876543210/17"]
+)
 def test_digits_break_and_stay_the_same(text):
     made = digits(text)
     assert made.replace("\\allowbreak ", "").replace("$-$", "-") == text
     assert max(map(len, re.findall("[0-9]+", made))) <= 14
 
 
-@pytest.mark.parametrize("ratio", [Fraction(2, 3), Fraction(-22, 7), Fraction(10**30, 3), Fraction(1, 7 * 10**20)])
+@pytest.mark.parametrize(
+    "ratio", [Fraction(2, 3), Fraction(-22, 7), Fraction(10**30, 3), Fraction(1, 7 * 10**20)]
+)
 def test_rounding_is_outward(ratio):
     low, high = Fraction(rounded(ratio, up=False)), Fraction(rounded(ratio, up=True))
     assert low < ratio < high
@@ -334,6 +350,8 @@ def test_constant_bounds(text, simpler):
 
 
 def test_primes_of_a_discriminant():
-    found = identities.discriminant([Fraction(1, 2), Fraction(0), Fraction(0), Fraction(0), Fraction(3, 2)])
+    found = identities.discriminant(
+        [Fraction(1, 2), Fraction(0), Fraction(0), Fraction(0), Fraction(3, 2)]
+    )
     assert (found.leading, found.primes) == (1, (2, 3))
     assert identities.discriminant([Fraction(1)]) is None

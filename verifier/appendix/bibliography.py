@@ -4,10 +4,11 @@ import re
 from collections.abc import Iterable, Mapping, Sequence
 from functools import cache
 
-from verifier.appendix.bibtex import Entry, read_bibtex
+from verifier.appendix.bibtex import Entry, check_bibtex, read_bibtex
 from verifier.appendix.environment import read_template
 from verifier.appendix.escape import Latex, accented, tex
 from verifier.case.case import Case
+from verifier.errors import CaseError
 
 COMMON = "common-practice"  # the source of what no paper introduced
 HARD_AND = "\u00a0and\u00a0"  # inside one name, where it separates no authors
@@ -23,12 +24,20 @@ def entries(case: Case) -> Mapping[str, Entry]:
     """Return every source that the appendix of `case` may cite, by key.
 
     A source of the case without BibTeX becomes an entry whose one field is its text.
+
+    Raises
+    ------
+    CaseError
+        If the BibTeX of a source cannot be read; a case reader says so earlier.
     """
     own: dict[str, Entry] = {}
     for key, source in case.sources.items():
         fields: Mapping[str, str] = {"note": source.text}
         kind = "misc"
         if source.bibtex:
+            problem = check_bibtex(source.bibtex)
+            if problem is not None:
+                raise CaseError(f"[source.{key}] bibtex: {problem}")
             read = read_bibtex(source.bibtex)[0]
             kind, fields = read.kind, read.fields
         own[key] = Entry(kind, key, fields)

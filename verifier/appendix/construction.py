@@ -5,7 +5,7 @@ from collections.abc import Callable
 from verifier.appendix.environment import has_template, render
 from verifier.appendix.escape import Latex, tex
 from verifier.appendix.polynomials import polynomial
-from verifier.case.case import Case, Condition, GraphTable, SequenceTable
+from verifier.case.case import Case, Condition, GraphTable, SequenceTable, Setting
 from verifier.registry import GRAPHS, RULES
 
 Cite = Callable[..., Latex]
@@ -46,10 +46,15 @@ def _rule(case: Case, table: SequenceTable, cite: Cite, source: Callable[[str], 
             polynomial=_polynomial(case, table),
             at_zero=_sign(table),
             file=_file(table.settings.get("file")),
+            setting=lambda key: _setting(table.settings[key]),
         )
         return Latex(made.code.strip() + after)
     definition = tex(entry.definition) if entry is not None else ""
-    return Latex(f"The sequence follows the rule {tex(table.rule)}: {definition}.{after}")
+    keys = ", ".join(f"{tex(key)} {_setting(set_).code}" for key, set_ in table.settings.items())
+    with_keys = f" The keys are {keys}." if keys else ""
+    return Latex(
+        f"The sequence follows the rule {tex(table.rule)}: {definition}.{with_keys}{after}"
+    )
 
 
 def graph_sentences(case: Case, cite: Cite) -> list[Latex]:
@@ -63,6 +68,17 @@ def graph_sentences(case: Case, cite: Cite) -> list[Latex]:
     entry = GRAPHS.entries.get(table.kind)
     definition = tex(entry.definition) if entry is not None else ""
     return [Latex(f"The graph is of the kind {tex(table.kind)}: {definition}.")]
+
+
+def _setting(setting: Setting) -> Latex:
+    """Return the value of a key: expressions and numbers as maths, texts as texts."""
+    if isinstance(setting, Condition):
+        return polynomial(setting.text)
+    if isinstance(setting, int):
+        return Latex(f"${setting}$")
+    if isinstance(setting, str):
+        return Latex(tex(setting))
+    return Latex(f"a list of {len(setting)} values")
 
 
 def _polynomial(case: Case, table: SequenceTable) -> Latex:

@@ -4,6 +4,8 @@ from collections.abc import Callable, Mapping, Sequence
 from dataclasses import dataclass
 from typing import Any
 
+from verifier.case.case import Case
+
 Certificate = Mapping[str, Any]
 
 
@@ -24,6 +26,25 @@ def exponents(polynomial: str) -> frozenset[int] | None:
         _, x, power = term.rpartition("x")
         found.add(int(power.removeprefix("^") or 1) if x else 0)
     return frozenset(found)
+
+
+def in_order(document: Mapping[str, Any], case: Case) -> dict[str, Any]:
+    """Return a document with parameters in the order of the case, all other keys sorted.
+
+    Files sort all keys, runs keep what they did first: what is printed depends on neither.
+    """
+    rank = {parameter.name: place for place, parameter in enumerate(case.parameters)}
+
+    def ordered(value: Any, key: str) -> Any:  # noqa: ANN401 any JSON
+        if isinstance(value, list):
+            return [ordered(item, "") for item in value]
+        if not isinstance(value, Mapping):
+            return value
+        by_rank = key in ("parameters", "first", "last")
+        names = sorted(value, key=lambda name: (rank.get(name, 0) if by_rank else 0, name))
+        return {name: ordered(value[name], name) for name in names}
+
+    return {name: ordered(document[name], name) for name in sorted(document)}
 
 
 def base(name: str) -> str:

@@ -65,22 +65,24 @@ class Formulas:
 
 
 SHORT = 16
-RELATION = re.compile(r"\\(?:le|ge|ne)(?![A-Za-z])|\\text\{ (?:and|or) \}|[<>=]")
+JUNCTION = re.compile(r"\\text\{ (?:and|or) \}")
+RELATION = re.compile(r"\\(?:le|ge|ne)(?![A-Za-z])|[<>=]")
 
 
 def rows_of(maths: str) -> list[str]:
-    r"""Return a formula cut before each relation and junction outside all groups.
+    r"""Return a formula cut before its junctions, or else its relations, outside all groups.
 
     Examples
     --------
     >>> rows_of(r"a \le \frac{b=c}{d}")
     ['a', '\\le \\frac{b=c}{d}']
     """
+    cutting = JUNCTION if JUNCTION.search(maths) else RELATION
     cuts = [0]
     depth = 0
     place = 0
     while place < len(maths):
-        found = RELATION.match(maths, place)
+        found = cutting.match(maths, place)
         if maths[place] in "{}":
             depth += 1 if maths[place] == "{" else -1
         elif maths.startswith(r"\left", place) and not maths[place + 5 : place + 6].isalpha():

@@ -98,16 +98,17 @@ def _values(found: Certificate, asked: set[str], typed: Callable[[str], Latex]) 
     return Latex("; ".join(shown) or "--")
 
 
-def widths(certificates: Sequence[Certificate]) -> dict[str, Latex]:
+def widths(certificates: Sequence[Certificate], *, wide_verdicts: bool) -> dict[str, Latex]:
     """Return the widths of the columns of the certificate table, as parts of the line."""
     longest = max((len(_flat(found["parameters"])) for found in certificates), default=0)
     at = 14 if longest < 12 else 22 if longest < 40 else 28
-    side = (61 - at) // 2
+    verdicts = 17 if wide_verdicts else 10
+    side = (71 - at - verdicts) // 2
     return {
         "at": Latex(f"0.{at}"),
         "side": Latex(f"0.{side}"),
         "both": Latex(f"0.{2 * side + 2}"),
-        "verdict": Latex("0.10"),
+        "verdict": Latex(f"0.{verdicts}"),
     }
 
 

@@ -59,25 +59,33 @@ def _size(meaning: str) -> Latex:
 def _entry_row(
     entry: Quantity | Predicate, formulas: Formulas, citations: Citations
 ) -> dict[str, Latex]:
-    counts: dict[str, int] = {}
-    letters: list[str] = []
-    for kind in entry.arguments:
-        letters.append(LETTERS[kind][counts.get(kind, 0)])
-        counts[kind] = counts.get(kind, 0) + 1
+    letters = _letters(entry)
     symbol = formulas.symbol(entry.name, letters)
     origin = citations.source(entry.source).code
     source = f" See {origin}." if origin else ""
     meaning = _meaning(entry)
     call = f"{entry.name}({', '.join(letters)})" if letters else entry.name
     return {
-        "symbol": Latex(f"${symbol}$"),
+        "symbol": Latex(f"\\primewiseinline{{{symbol}}}{{{typed(call).code}}}"),
         "meaning": Latex(f"{meaning}.{source} In the case file: {typed(call).code}."),
     }
 
 
+def _letters(entry: Quantity | Predicate) -> list[str]:
+    """Return a letter for each argument: t for numbers of steps, else by the kind."""
+    if entry.name in ("cycles", "closed_walks"):
+        return ["t"]
+    counts: dict[str, int] = {}
+    letters: list[str] = []
+    for kind in entry.arguments:
+        letters.append(LETTERS[kind][counts.get(kind, 0)])
+        counts[kind] = counts.get(kind, 0) + 1
+    return letters
+
+
 def _meaning(entry: Quantity | Predicate) -> str:
     """Return the definition as maths where there is a template for it, else in its own words."""
-    name = f"appendix/quantities/{entry.name}.tex.jinja"
+    name = f"appendix/meanings/{entry.name}.tex.jinja"
     if has_template(name):
         return render(name).code.strip()
     return tex(entry.definition).rstrip(".")

@@ -8,7 +8,7 @@ from verifier.appendix.bibliography import Citations, bib_text, entries, item
 from verifier.appendix.construction import graph_sentences, sequence_sentences
 from verifier.appendix.environment import render
 from verifier.appendix.escape import Latex, plain, tex
-from verifier.appendix.facts import Certificate, Facts
+from verifier.appendix.facts import Certificate, Facts, in_order
 from verifier.appendix.formulas import Formulas, typed
 from verifier.appendix.parameters import parameter_sentence
 from verifier.appendix.proofs import sketches
@@ -90,8 +90,8 @@ class _Printer:
         self, case: Case, summary: Summary, certificates: Sequence[Certificate], *, fragment: bool
     ) -> None:
         self.case = case
-        self.summary = summary
-        self.facts = Facts(certificates)
+        self.summary = in_order(summary, case)
+        self.facts = Facts([in_order(found, case) for found in certificates])
         self.formulas = Formulas(case)
         self.citations = Citations(entries(case))
         self.fragment = fragment
@@ -129,6 +129,7 @@ class _Printer:
             "where": [formulas.inline(condition) for condition in case.where],
             "total": facts.total,
             "nowhere": facts.total - len(facts.built),
+            "primes": any(found.get("primality") for found in facts.certificates),
             "notation": notation_rows(case, facts, formulas, citations),
             "hypotheses": hypotheses(case, formulas),
             "discriminants": discriminant_sentences(case, facts),
@@ -138,6 +139,7 @@ class _Printer:
 
     def _evidence(self, *, all_rows: bool) -> dict[str, object]:
         case, summary, found = self.case, self.summary, self.facts.certificates
+        empty = any(claim["trivial"] for claim in summary["claims"])
         heads = {
             table.name: [self.formulas.inline(column) for column in table.columns]
             for table in case.tables
@@ -149,8 +151,8 @@ class _Printer:
             "tables": case_tables(case, summary, found, heads, all_rows=all_rows),
             "certificates": certificate_tables(case, summary, found, typed, all_rows=all_rows),
             "measured": measured_table(case, found, typed, all_rows=all_rows),
-            "widths": widths(found),
-            "empty_somewhere": any(claim["trivial"] for claim in summary["claims"]),
+            "widths": widths(found, wide_verdicts=empty),
+            "empty_somewhere": empty,
         }
 
     def _references(self) -> dict[str, object]:

@@ -133,7 +133,8 @@ def check_measured(tree: Tree, names: Names, text: str) -> None:
 def check_setting(tree: Tree, names: Names, text: str) -> None:
     """Accept an integer expression in parameters alone, as `length` or `indices` want."""
     check_value(
-        tree, Names(numbers=names.numbers, sizes=names.sizes & {"p", "q"}, has_prime=names.has_prime),
+        tree,
+        Names(numbers=names.numbers, sizes=names.sizes & {"p", "q"}, has_prime=names.has_prime),
         text,
     )
 
@@ -284,7 +285,9 @@ def _entry(
             orders = entry.orders
             if kind == "order" and orders and argument.value not in orders:
                 known = ", ".join(map(str, orders))
-                _refuse(argument, text, f"{entry.name} is not supported there; known orders: {known}")
+                _refuse(
+                    argument, text, f"{entry.name} is not supported there; known orders: {known}"
+                )
 
 
 def _lacking(entry: Quantity | Predicate, names: Names) -> str | None:
@@ -305,5 +308,3 @@ def _lacking(entry: Quantity | Predicate, names: Names) -> str | None:
 
 def _refuse(tree: Tree, text: str, problem: str) -> None:
     raise ExpressionError(text, tree.column, problem)
-
-

@@ -45,7 +45,9 @@ def combinations(case: Case, keep: Keep) -> list[Combination]:
     CaseError
         If none is left: an empty check would hold without testing anything.
     """
-    found = [made for made in _extend(case, 0, Combination({}, {}, {}, None, listed=False)) if keep(made)]
+    found = [
+        made for made in _extend(case, 0, Combination({}, {}, {}, None, listed=False)) if keep(made)
+    ]
     if not found:
         raise CaseError("[parameters] where: no combination satisfies every condition")
     return found
@@ -116,7 +118,9 @@ def _with_listed(case: Case, made: Combination) -> Combination:
 
 def _family(family: Family, made: Combination) -> Iterator[Combination]:
     if made.p is None:
-        raise CaseError(f"[parameters] {family.name}: a family is drawn over F_p; p must stand above it")
+        raise CaseError(
+            f"[parameters] {family.name}: a family is drawn over F_p; p must stand above it"
+        )
     for residues in family_members(family, made.p):
         yield replace(
             made,

@@ -24,7 +24,11 @@ class Strict(BaseModel):
     """A table whose unknown keys and wrong types are errors."""
 
     model_config = ConfigDict(
-        extra="forbid", strict=True, frozen=True, alias_generator=_hyphened, hide_input_in_errors=True
+        extra="forbid",
+        strict=True,
+        frozen=True,
+        alias_generator=_hyphened,
+        hide_input_in_errors=True,
     )
 
 
@@ -119,7 +123,9 @@ class ChooseTable(Strict):
 class ProfileTable(Strict):
     """`[profile]`."""
 
-    properties: Literal["all"] | Annotated[list[Annotated[int, Field(ge=1, le=7)]], Field(min_length=1)]
+    properties: (
+        Literal["all"] | Annotated[list[Annotated[int, Field(ge=1, le=7)]], Field(min_length=1)]
+    )
 
 
 class SourceTable(Strict):

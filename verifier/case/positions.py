@@ -1,15 +1,18 @@
 """Find the line of a key in a TOML text, with the parser itself as the oracle."""
 
+import re
 import tomllib
 from collections.abc import Sequence
 
 Path = Sequence[str | int]
 
+MOST_PARSED = 20_000_000  # characters; a value that spans very many lines would cost more
+
 
 def line_of(text: str, path: Path) -> int:
-    """Return the line, from 1, on which the value at `path` first appears.
+    r"""Return the line, from 1, on which the value at `path` first appears.
 
-    Where the path leads nowhere (a key that is missing), the line of its longest existing beginning.
+    Where the path leads nowhere (a missing key), the line of its longest existing beginning.
 
     Parameters
     ----------
@@ -20,51 +23,64 @@ def line_of(text: str, path: Path) -> int:
 
     Notes
     -----
-    Bisection over the prefixes that parse: about log2(lines) parses.
+    Bisection over the prefixes that parse: about log2(lines) parses. Where a value spans so many
+    lines that this is dear, the first line that begins with the key is returned.
 
     Examples
     --------
-    >>> line_of('a = 1\\n[b]\\nc = 2\\n', ["b", "c"])
+    >>> line_of("a = 1\n[b]\nc = 2\n", ["b", "c"])
     3
-    >>> line_of('a = 1\\n[b]\\nc = 2\\n', ["b", "d"])
+    >>> line_of("a = 1\n[b]\nc = 2\n", ["b", "d"])
     2
     """
-    lines = text.split("\n")
     trimmed = list(path)
-    while trimmed and not _reaches(text, trimmed):
+    while trimmed and not _reaches(tomllib.loads(text), trimmed):
         trimmed.pop()
     if not trimmed:
         return 1
-    absent, present = 0, len(lines)
+    search = _Search(text)
+    absent, present = 0, len(search.lines)
     while present - absent > 1:
         middle = (absent + present) // 2
-        parsed = _shortest_parsed(lines, middle)
-        if _reaches(parsed, trimmed):
+        document = search.shortest_document(middle)
+        if document is None:
+            return _first_mention(search.lines, trimmed)
+        if _reaches(document, trimmed):
             present = middle
         else:
             absent = middle
     return present
 
 
-def _shortest_parsed(lines: list[str], count: int) -> str:
-    """Return the shortest prefix of at least `count` lines that parses."""
-    for end in range(count, len(lines) + 1):
-        prefix = "\n".join(lines[:end]) + "\n"
-        if _parses(prefix):
-            return prefix
-    return ""
+class _Search:
+    """Parses prefixes of one text, within a budget of characters."""
+
+    def __init__(self, text: str) -> None:
+        self.lines = text.split("\n")
+        self.parsed = 0
+
+    def shortest_document(self, count: int) -> object:
+        """Return what the shortest parsing prefix of at least `count` lines holds, or None."""
+        for end in range(count, len(self.lines) + 1):
+            prefix = "\n".join(self.lines[:end]) + "\n"
+            self.parsed += len(prefix)
+            if self.parsed > MOST_PARSED:
+                return None
+            try:
+                return tomllib.loads(prefix)
+            except tomllib.TOMLDecodeError:
+                continue
+        return None
 
 
-def _parses(text: str) -> bool:
-    try:
-        tomllib.loads(text)
-    except tomllib.TOMLDecodeError:
-        return False
-    return True
+def _first_mention(lines: Sequence[str], path: Path) -> int:
+    keys = [step for step in path if isinstance(step, str)]
+    pattern = re.compile(rf"\s*[\"']?{re.escape(keys[-1])}[\"']?\s*=")
+    return next((number for number, line in enumerate(lines, 1) if pattern.match(line)), 1)
 
 
-def _reaches(text: str, path: Path) -> bool:
-    found: object = tomllib.loads(text)
+def _reaches(document: object, path: Path) -> bool:
+    found = document
     for step in path:
         if isinstance(found, dict) and step in found:
             found = found[step]

@@ -7,6 +7,8 @@ from typing import Any
 
 from pydantic import ValidationError
 
+from verifier.appendix.escape import unprintable
+from verifier.appendix.maths import check_head, check_maths
 from verifier.case.case import Case, Claim, Condition, Source, Table
 from verifier.case.check import Names, check_condition, check_measured, check_value, check_where
 from verifier.case.model import CaseFile
@@ -18,8 +20,6 @@ from verifier.case.sections import (
     read_sequence,
 )
 from verifier.case.shapes import shape_problems
-from verifier.appendix.escape import unprintable
-from verifier.appendix.maths import check_head, check_maths
 from verifier.errors import CaseError, ExpressionError
 from verifier.expressions.names import expand
 from verifier.expressions.parse import parse
@@ -167,12 +167,11 @@ class _Reader:
                 self.problems.add([key], f"{shown} is not supported by this version")
         if not (raw.claim or raw.table or raw.measure or any(sections.values())):
             self.problems.add(
-                ["format"], "the case asks for nothing: a [[claim]], [[table]] or [measure] was wanted"
+                ["format"],
+                "the case asks for nothing: a [[claim]], [[table]] or [measure] was wanted",
             )
 
-    def _condition(
-        self, path: list[str | int], label: str, text: str, kind: str
-    ) -> Condition:
+    def _condition(self, path: list[str | int], label: str, text: str, kind: str) -> Condition:
         """Return a checked expression; what is wrong with it is noted, and 0 stands in."""
         stripped = text.strip()
         try:

@@ -170,7 +170,9 @@ def _make_values(_: Section, name: str, raw: Any) -> Values:  # noqa: ANN401 a p
 
 
 def _make_polynomials(
-    section: Section, name: str, raw: Any  # noqa: ANN401 a pydantic model
+    section: Section,
+    name: str,
+    raw: Any,  # noqa: ANN401 a pydantic model
 ) -> Polynomials:
     if name in ("p", "q"):
         raise CaseError(f"{name} is a number; primes or values were wanted")
@@ -197,9 +199,7 @@ def _make_family(_: Section, name: str, raw: Any) -> Family:  # noqa: ANN401 a p
         raise CaseError("sample and seed stand together")
     if raw.even and raw.degree % 2:
         raise CaseError(f"no even polynomial has degree {raw.degree}; an even degree was wanted")
-    return Family(
-        name, raw.degree, raw.even, raw.monic, raw.squarefree, raw.sample, raw.seed or 0
-    )
+    return Family(name, raw.degree, raw.even, raw.monic, raw.squarefree, raw.sample, raw.seed or 0)
 
 
 _MAKERS = {
@@ -220,7 +220,9 @@ def _check_together(section: Section, found: list[Parameter], names: Names) -> N
         path: KeyPath = ["parameters", parameter.name]
         label = f"[parameters] {parameter.name}"
         if isinstance(parameter, Family) and not {"p", "q"} & set(order[:position]):
-            section.problems.add(path, f"{label}: a family is drawn over F_p; p must stand above it")
+            section.problems.add(
+                path, f"{label}: a family is drawn over F_p; p must stand above it"
+            )
         if isinstance(parameter, Polynomials):
             for text, tree in zip(parameter.texts, parameter.trees, strict=True):
                 try:
@@ -291,7 +293,8 @@ def read_graph(
         return None
     if kind.from_sequence and sequence is None and not section.problems.found:
         section.problems.add(
-            ["graph", "kind"], f"[graph]: the kind {name} is made from a sequence; [sequence] was wanted"
+            ["graph", "kind"],
+            f"[graph]: the kind {name} is made from a sequence; [sequence] was wanted",
         )
     return GraphTable(kind.name, _settings(section, "graph", raw, kind.keys, names))
 
@@ -304,7 +307,9 @@ def _settings(
     for name in raw:
         if name not in keys and name not in shared:
             near = nearest(name, [*keys, *shared])
-            section.problems.add([table, name], f"[{table}] {name}: this key is unknown here; {near}")
+            section.problems.add(
+                [table, name], f"[{table}] {name}: this key is unknown here; {near}"
+            )
     found: dict[str, Setting] = {}
     for name, key in keys.items():
         if name in raw:
@@ -318,7 +323,7 @@ def _settings(
     return found
 
 
-def _setting(  # noqa: PLR0913 the place, the value and what is wanted
+def _setting(
     section: Section, path: KeyPath, label: str, value: object, key: Key, names: Names
 ) -> Setting | None:
     try:
@@ -330,9 +335,7 @@ def _setting(  # noqa: PLR0913 the place, the value and what is wanted
     return None
 
 
-def _read_polynomial(
-    _: Section, __: KeyPath, ___: str, value: object, names: Names
-) -> Condition:
+def _read_polynomial(_: Section, __: KeyPath, ___: str, value: object, names: Names) -> Condition:
     text = _text(value, "a polynomial in x as a text")
     tree = parse(text)
     check_polynomial(tree, names, text, among_polynomials=True)
@@ -392,19 +395,21 @@ _READERS = {
 }
 
 
-def _indices(
-    section: Section, value: object, names: Names
-) -> tuple[Condition, Condition] | None:
+def _indices(section: Section, value: object, names: Names) -> tuple[Condition, Condition] | None:
     if value is None:
         return None
     path: KeyPath = ["sequence", "indices"]
     label = "[sequence] indices"
     ends = value.split("..") if isinstance(value, str) else []
     if len(ends) != 2:
-        section.problems.add(path, f'{label}: {value!r} stands there; a range as "0..p-1" was wanted')
+        section.problems.add(
+            path, f'{label}: {value!r} stands there; a range as "0..p-1" was wanted'
+        )
         return None
     try:
-        return _integer_expression(ends[0].strip(), names), _integer_expression(ends[1].strip(), names)
+        return _integer_expression(ends[0].strip(), names), _integer_expression(
+            ends[1].strip(), names
+        )
     except ExpressionError as problem:
         section.problems.add_expression(path, label, problem)
         return None

@@ -57,8 +57,8 @@ def _exponent(x: Fraction) -> int:
 def _scaled(x: Fraction, places: int) -> int:
     """Return floor(x 10^places)."""
     if places >= 0:
-        return x.numerator * 10**places // x.denominator
-    return x.numerator // (x.denominator * 10**-places)
+        return x.numerator * int(10**places) // x.denominator
+    return x.numerator // (x.denominator * int(10**-places))
 
 
 def _decimal(scaled: int, places: int) -> str:

@@ -95,7 +95,9 @@ def compare(x: Real, y: Real) -> int:
         return 1
     if low < high:
         return -1
-    return sign(Node("add", x, -y if isinstance(y, Fraction) else Node("multiply", Fraction(-1), y)))
+    return sign(
+        Node("add", x, -y if isinstance(y, Fraction) else Node("multiply", Fraction(-1), y))
+    )
 
 
 def rational_value(x: Real) -> Fraction | None:

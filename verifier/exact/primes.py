@@ -19,9 +19,7 @@ def is_prime(number: int) -> bool:
     return number > 1 and bool(fmpz(number).is_prime())
 
 
-def primes_between(
-    first: int, last: int, residue: tuple[int, int] = (0, 1)
-) -> list[int]:
+def primes_between(first: int, last: int, residue: tuple[int, int] = (0, 1)) -> list[int]:
     """Return the primes p of the closed interval with p = a mod m, residue = (a, m), ascending.
 
     Cost: a sieve of the interval, about last - first bytes and sqrt(last) passes.

@@ -14,8 +14,8 @@ from verifier.errors import (
     UndefinedError,
 )
 from verifier.exact import reals
-from verifier.exact.decide import compare, rational_value, sign, way
-from verifier.exact.reals import Real
+from verifier.exact.decide import compare, rational_value, settled, sign, way
+from verifier.exact.nodes import Real
 from verifier.expressions.text import to_text
 from verifier.expressions.tree import (
     And,
@@ -84,7 +84,7 @@ class Leaf:
 
 @dataclass(frozen=True)
 class Judged:
-    """A condition, judged: its leaves in the order of the text, the verdict, and why, if not clear."""
+    """A condition, judged: its leaves in the order of the text, the verdict, and why it is open."""
 
     leaves: tuple[Leaf, ...]
     verdict: str
@@ -252,8 +252,8 @@ def _relation(tree: Relation, scope: Scope) -> Leaf:
     left: Real | None = None
     right: Real | None = None
     try:
-        left = reals.settled(value(tree.left, scope))
-        right = reals.settled(value(tree.right, scope))
+        left = settled(value(tree.left, scope))
+        right = settled(value(tree.right, scope))
         verdict = "holds" if _true(tree.operator, compare(left, right)) else "fails"
     except OutsideError as problem:
         return Leaf(says, "outside", relation=True, reason=str(problem))

@@ -123,7 +123,10 @@ class _Printer:
         left, right = tree.left, tree.right
         match tree.operator:
             case "+" | "-":
-                return f"{self._inside(left, SUM)} {tree.operator} {self._inside(right, PRODUCT)}", SUM
+                return (
+                    f"{self._inside(left, SUM)} {tree.operator} {self._inside(right, PRODUCT)}",
+                    SUM,
+                )
             case "/":
                 return rf"\frac{{{self._whole(left)}}}{{{self._whole(right)}}}", POWER
             case "^":

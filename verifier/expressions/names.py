@@ -88,11 +88,28 @@ def closed_parts(tree: Tree, known: Set[str], *, conditions: bool = False) -> li
     whole = conditions or not isinstance(tree, Relation | Not | And | Or)
     if whole and _closed(tree, known):
         return [tree]
-    return [found for part in children(tree) for found in closed_parts(part, known, conditions=conditions)]
+    return [
+        found
+        for part in children(tree)
+        for found in closed_parts(part, known, conditions=conditions)
+    ]
 
 
 FUNCTIONS = frozenset(
-    {"sqrt", "log", "exp", "floor", "ceil", "abs", "min", "max", "binomial", "factorial", "round", "chi"}
+    {
+        "sqrt",
+        "log",
+        "exp",
+        "floor",
+        "ceil",
+        "abs",
+        "min",
+        "max",
+        "binomial",
+        "factorial",
+        "round",
+        "chi",
+    }
 )
 
 

@@ -87,7 +87,9 @@ def check_exponents(tree: Tree, text: str) -> None:
         size = _constant(tree.right)
         if size is not None and abs(size) > LARGEST_EXPONENT:
             _refuse(
-                text, tree.right.column, f"a constant exponent of at most {LARGEST_EXPONENT} was wanted"
+                text,
+                tree.right.column,
+                f"a constant exponent of at most {LARGEST_EXPONENT} was wanted",
             )
     for part in children(tree):
         check_exponents(part, text)
@@ -185,7 +187,9 @@ def _check_number(text: str, end: int) -> None:
     if after == "_":
         _refuse(text, end, "a number is written without _")
     if after.isalpha():
-        _refuse(text, end, "a letter follows a number; write * for a product, digits in full for 1e3")
+        _refuse(
+            text, end, "a letter follows a number; write * for a product, digits in full for 1e3"
+        )
     if after == "(":
         _refuse(text, end, "a parenthesis follows a number; write * for a product")
 

@@ -53,7 +53,7 @@ def _decimals(tree: Call, scope: InstanceScope) -> str:
     """Return `round(x, d)` with exactly d decimals."""
     digits = rational_value(value(tree.arguments[1], scope))
     places = int(digits) if digits is not None else 0
-    scaled = rounded(value(tree.arguments[0], scope), places) * 10**max(places, 0)
+    scaled = rounded(value(tree.arguments[0], scope), places) * 10 ** max(places, 0)
     whole = abs(scaled.numerator)
     sign = "-" if scaled < 0 else ""
     if places <= 0:

@@ -7,7 +7,7 @@ from verifier.case.combinations import Combination
 from verifier.errors import OutsideError
 from verifier.exact.canonical import canonical, rational_text
 from verifier.exact.primes import pratt
-from verifier.exact.reals import Real
+from verifier.exact.nodes import Real
 from verifier.expressions.evaluate import value
 from verifier.instance.build import Built, build
 from verifier.instance.cells import cell
@@ -147,5 +147,3 @@ def _cell(table: Table, column: Condition, scope: InstanceScope) -> str:
         return "outside"
     except WITHOUT_VALUE:
         return "open"
-
-

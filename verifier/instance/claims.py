@@ -7,7 +7,7 @@ from verifier.case.case import Claim, Condition
 from verifier.errors import CaseError, UndecidedError, VerifierError
 from verifier.exact.canonical import canonical
 from verifier.exact.decide import compare
-from verifier.exact.reals import Real
+from verifier.exact.nodes import Real
 from verifier.expressions.evaluate import Judged, Leaf, judge, value
 from verifier.expressions.tree import Call, Name, Relation, Tree
 from verifier.instance.scope import InstanceScope
@@ -120,14 +120,12 @@ def _is_trivial(tree: Tree, scope: InstanceScope) -> bool:
     try:
         _, values = scope.key(*named)
         most = entry.maximum(scope.sizes, *values)
-        if most is None:
-            return False
-        over = compare(value(large, scope), Fraction(most))
+        over = 0 if most is None else compare(value(large, scope), Fraction(most))
     except CaseError:
         raise
     except VerifierError:
         return False
-    return over > 0 or (over == 0 and operator == "<=")
+    return most is not None and (over > 0 or (over == 0 and operator == "<="))
 
 
 def _quantity(tree: Tree) -> tuple[str, tuple[Tree, ...]] | None:

@@ -8,7 +8,7 @@ from flint import fmpz
 
 from verifier.case.combinations import Combination
 from verifier.errors import UndefinedError
-from verifier.exact.reals import Real
+from verifier.exact.nodes import Real
 from verifier.expressions.tree import Tree
 
 
@@ -26,11 +26,11 @@ class ParameterScope:
             return Fraction(self.combination.p)
         raise UndefinedError(f"undefined: {name}")
 
-    def quantity(self, name: str, arguments: Sequence[Tree]) -> Real:
+    def quantity(self, name: str, _: Sequence[Tree]) -> Real:
         """Refuse: nothing is measured here."""
         raise UndefinedError(f"undefined: {name}")
 
-    def predicate(self, name: str, arguments: Sequence[Tree]) -> bool:
+    def predicate(self, name: str, _: Sequence[Tree]) -> bool:
         """Refuse: nothing is measured here."""
         raise UndefinedError(f"undefined: {name}")
 
@@ -44,7 +44,7 @@ class ParameterScope:
         """Refuse: no polynomial is known here."""
         raise UndefinedError("undefined: leading")
 
-    def value(self, number: int) -> int:
+    def value(self, _: int) -> int:
         """Refuse: no polynomial is known here."""
         raise UndefinedError("undefined: value")
 

@@ -18,7 +18,8 @@ from verifier.errors import (
     UndefinedError,
 )
 from verifier.exact.decide import rational_value
-from verifier.exact.reals import Real, floor
+from verifier.exact.nodes import Real
+from verifier.exact.reals import floor
 from verifier.expressions.evaluate import value
 from verifier.expressions.tree import Tree
 from verifier.records import Finding, Measurement, Sizes

@@ -2,16 +2,18 @@
 
 The terms are packed into 64-bit words; the word of products at lag t is the exclusive or of the
 packed terms with those shifted by t. Partial sums at the ends of words come from population counts
-and bound the range: between two such ends a sum strays by at most 32 from the nearer one, so the
-range is at most 2 (coarse range) + 2 max(32, tail) in the units of half sums used here. Only lags
-whose bound reaches the best value so far are summed term by term.
+and bound the range: between two such ends a sum strays by at most 32 from the nearer one, behind
+the last one by the length of the tail. Sums at the ends of words are even and are kept halved, so
+the range is at most 2 (coarse range) + 2 max(32, tail). Only lags whose bound reaches the best
+value so far are summed term by term.
 """
 
 import numpy as np
-from numba import njit
+from verifier.kernels.compiled import compiled
 from numpy.typing import NDArray
 
 from verifier.kernels.autocorrelation import periodic_autocorrelation
+from verifier.kernels.packed import ones, packed_from
 
 CANDIDATES = 40
 TILE = 512
@@ -27,22 +29,19 @@ def correlation_two(signs: NDArray[np.int8]) -> tuple[int, list[tuple[int, ...]]
 
     Notes
     -----
-    Cost: about N^2/64 word operations, 64 N/8 bytes. Sums are below N < 2^31 in int32.
+    Cost: about N^2/64 word operations, 8 N bytes. Sums are below N < 2^31 in int32.
     """
     count = len(signs)
-    best = 0
-    for lag in _promising(signs):
-        best = max(best, int(_range_at(signs, lag)))
+    best = max(int(_range_at(signs, lag)) for lag in _promising(signs))
     attained: list[int] = []
-    words = _shifted(signs)
-    for shift in range(64):
-        full = (count - shift) // 64
-        tail = (count - shift) % 64
-        high, low = _coarse(words[0], words[shift], full)
+    words = [packed_from(signs, shift, count // 64 + 2) for shift in range(min(64, count))]
+    for shift, shifted in enumerate(words):
+        full, tail = divmod(count - shift, 64)
+        high, low = _coarse(words[0], shifted, full)
         bound = 2 * (high - low) + 2 * max(32, tail)
-        lags = np.flatnonzero(bound >= best) * 64 + shift
-        for lag in lags[(lags > 0) & (lags < count)].tolist():
-            if count - lag < best or bound[lag // 64] < best:
+        for block in np.flatnonzero(bound >= best).tolist():
+            lag = 64 * block + shift
+            if not 0 < lag <= count - best or bound[block] < best:
                 continue
             value = int(_range_at(signs, lag))
             if value > best:
@@ -59,41 +58,20 @@ def _promising(signs: NDArray[np.int8]) -> list[int]:
     return [int(place) + 1 for place in np.argsort(-sums, kind="stable")[:few]]
 
 
-def _shifted(signs: NDArray[np.int8]) -> list[NDArray[np.uint64]]:
-    """Return the packed terms from each of the first 64 places on, bit 1 for -1, zeros behind."""
-    bits = (signs < 0).astype(np.uint8)
-    found: list[NDArray[np.uint64]] = []
-    for shift in range(64):
-        packed = np.packbits(bits[shift:], bitorder="little")
-        size = (len(bits) // 64 + 2) * 8
-        padded = np.zeros(size, np.uint8)
-        padded[: len(packed)] = packed
-        found.append(padded.view(np.uint64))
-    return found
-
-
-@njit(cache=True)
-def _bits(word):
-    word = word - ((word >> np.uint64(1)) & np.uint64(0x5555555555555555))
-    word = (word & np.uint64(0x3333333333333333)) + (
-        (word >> np.uint64(2)) & np.uint64(0x3333333333333333)
-    )
-    word = (word + (word >> np.uint64(4))) & np.uint64(0x0F0F0F0F0F0F0F0F)
-    return (word * np.uint64(0x0101010101010101)) >> np.uint64(56)
-
-
-@njit(cache=True)
-def _range_at(signs, lag):
+@compiled
+def _range_at(signs: NDArray[np.int8], lag: int) -> int:
     total = high = low = 0
     for x in range(signs.shape[0] - lag):
-        total += np.int64(signs[x] * signs[x + lag])
+        total += signs[x] * signs[x + lag]
         high = max(high, total)
         low = min(low, total)
     return high - low
 
 
-@njit(cache=True, boundscheck=False)
-def _coarse(first, second, full):
+@compiled
+def _coarse(
+    first: NDArray[np.uint64], second: NDArray[np.uint64], full: int
+) -> tuple[NDArray[np.int32], NDArray[np.int32]]:
     """Return extremes of half the partial sums at ends of words, for the lags 64 q + shift."""
     highs = np.zeros(full + 1, np.int32)
     lows = np.zeros(full + 1, np.int32)
@@ -110,7 +88,7 @@ def _coarse(first, second, full):
             reach = min(width, full - start - k)
             others = second[k + start : k + start + reach]
             for q in range(reach):
-                total = sums[q] + np.int32(32) - np.int32(_bits(word ^ others[q]))
+                total = sums[q] + np.int32(32) - np.int32(ones(word ^ others[q]))
                 sums[q] = total
                 high[q] = max(high[q], total)
                 low[q] = min(low[q], total)

@@ -1,4 +1,6 @@
-"""The range of partial sums of a word: the largest sum over any window, and where it lies."""
+"""The largest sum over any window of a product word, and where it lies."""
+
+from collections.abc import Iterable
 
 import numpy as np
 from numpy.typing import NDArray
@@ -6,8 +8,8 @@ from numpy.typing import NDArray
 from verifier.kernels.windows import largest_window, prefix_sums
 
 
-def least_windows(
-    signs: NDArray[np.int8], lags: list[tuple[int, ...]], best: int
+def least_window(
+    signs: NDArray[np.int8], lags: Iterable[tuple[int, ...]], best: int
 ) -> tuple[int, ...]:
     """Return the lexicographically least (d_1, ..., d_l, M) whose sum is `best` in absolute value.
 
@@ -16,21 +18,24 @@ def least_windows(
     signs
         N terms.
     lags
-        Every tuple (t_2, ..., t_l) of lags at which the largest window has the value `best`.
+        Ascending tuples (t_2, ..., t_l) of lags, all those at which the largest window has the
+        value `best` > 0, or the one among them with the least witness.
     best
         That value.
     """
-    found: list[tuple[int, ...]] = []
+    found: tuple[int, ...] = ()
     for lag in lags:
-        value, first, end = largest_window(prefix_sums(product_word(signs, lag)))
-        if value == best:
-            found.append((first, *(first + t for t in lag), end - first))
-    return min(found)
+        _, first, end = largest_window(prefix_sums(product_word(signs, lag)))
+        if not found or first < found[0]:
+            found = (first, *(first + t for t in lag), end - first)
+        if first == 0:
+            break
+    return found
 
 
 def product_word(signs: NDArray[np.int8], lag: tuple[int, ...]) -> NDArray[np.int8]:
     """Return e[x] e[x + t_2] ... e[x + t_l] for all x where every place exists."""
-    length = len(signs) - lag[-1]
+    length = len(signs) - (lag[-1] if lag else 0)
     word = signs[:length].copy()
     for t in lag:
         word *= signs[t : t + length]

@@ -4,11 +4,10 @@ import numpy as np
 from numpy.typing import NDArray
 
 Pair = tuple[int, int]
+Counts = tuple[int, int, int, Pair | None, int, Pair | None, int]
 
 
-def matrix_pairs(
-    entries: NDArray[np.int8], degrees: NDArray[np.int64]
-) -> tuple[int, int, int, Pair | None, int, Pair | None, int]:
+def matrix_pairs(entries: NDArray[np.int8], degrees: NDArray[np.int64]) -> Counts:
     """Return the statistics of all ordered pairs of rows of a symmetric 0/1 matrix.
 
     Parameters
@@ -25,10 +24,10 @@ def matrix_pairs(
     Notes
     -----
     Twice |S(i,j) - n/2| is |n - 2 d_i - 2 d_j + 4 c(i,j)|. Cost: n^3/128 word operations, n^2/8
-    bytes for the packed rows. Every partial sum stays below 4 n^2 a row.
+    bytes for the packed rows. Every sum over a row stays below 9 n^2.
     """
     n = len(entries)
-    packed = _packed(entries)
+    packed = packed_rows(entries)
     agreement = codegree = squares = 0
     least: tuple[int, Pair] | None = None
     most: tuple[int, Pair] | None = None
@@ -52,7 +51,7 @@ def matrix_pairs(
     return agreement, codegree, *least, *most, squares
 
 
-def _packed(entries: NDArray[np.int8]) -> NDArray[np.uint64]:
+def packed_rows(entries: NDArray[np.int8]) -> NDArray[np.uint64]:
     """Return the rows as 64-bit words, the last one filled up with 0."""
     n = len(entries)
     words = np.zeros((n, -(-n // 64) * 8), np.uint8)

@@ -1,20 +1,38 @@
 """The well-distribution measure: the largest sum over any arithmetic progression."""
 
+from collections.abc import Callable
+
 import numpy as np
 from numpy.typing import NDArray
 
 from verifier.kernels.windows import largest_window, prefix_sums
 
 Progression = tuple[int, int, int]
+StepRanges = Callable[[NDArray[np.int8], int], NDArray[np.int32]]
 
 
-def largest_progression(signs: NDArray[np.int8]) -> tuple[int, Progression]:
+def step_ranges_plain(signs: NDArray[np.int8], step: int) -> NDArray[np.int32]:
+    """Return, for each residue a < step, the largest window sum of e[a], e[a + step], ..."""
+    count = len(signs)
+    length = -(-count // step)
+    table = np.zeros((length, step), np.int8)
+    table.reshape(-1)[:count] = signs
+    sums = np.cumsum(table, axis=0, dtype=np.int32)
+    ranges: NDArray[np.int32] = np.maximum(sums.max(axis=0), 0) - np.minimum(sums.min(axis=0), 0)
+    return ranges
+
+
+def largest_progression(
+    signs: NDArray[np.int8], step_ranges: StepRanges = step_ranges_plain
+) -> tuple[int, Progression]:
     """Return the largest sum over a progression, and the least (b, a, t) that attains it.
 
     Parameters
     ----------
     signs
-        N terms, N >= 1.
+        N terms, 1 <= N < 2^31.
+    step_ranges
+        What finds the largest window sums for one step.
 
     Notes
     -----
@@ -25,13 +43,9 @@ def largest_progression(signs: NDArray[np.int8]) -> tuple[int, Progression]:
     count = len(signs)
     best, witness = 0, (1, 0, 1)
     for step in range(1, count + 1):
-        length = -(-count // step)
-        if length <= best:
+        if -(-count // step) <= best:
             break
-        table = np.zeros((length, step), np.int8)
-        table.reshape(-1)[:count] = signs
-        sums = np.cumsum(table, axis=0, dtype=np.int64)
-        ranges = np.maximum(sums.max(axis=0), 0) - np.minimum(sums.min(axis=0), 0)
+        ranges = step_ranges(signs, step)
         value = int(ranges.max())
         if value > best:
             best, witness = value, _least(signs, step, np.flatnonzero(ranges == value))

@@ -44,7 +44,6 @@ def largest_cyclic_window(values: NDArray[np.int8]) -> tuple[int, int, int]:
     p = len(values)
     sums = prefix_sums(values)
     total = int(sums[-1])
-    best = largest_window(sums)[0]
     ahead_high = np.maximum.accumulate(sums[::-1])[::-1]  # over j >= i
     ahead_low = np.minimum.accumulate(sums[::-1])[::-1]
     behind_high = np.maximum.accumulate(sums)  # over j <= i, the wrapped ends
@@ -58,7 +57,7 @@ def largest_cyclic_window(values: NDArray[np.int8]) -> tuple[int, int, int]:
             start - total - behind_low[:p],
         ]
     )
-    best = max(best, int(reach.max()))
+    best = int(reach.max())
     first = int(np.flatnonzero(reach == best)[0]) if best else 0
     ends = np.concatenate([sums[first:], total + sums[1 : first + 1]])
     return best, first, first + int(np.flatnonzero(np.abs(ends - sums[first]) == best)[0])

@@ -11,6 +11,8 @@ from math import comb
 from operator import mul
 from typing import Any
 
+from .reals import OpenError
+
 Measured = tuple[int | Fraction, tuple[int, ...] | None]
 
 

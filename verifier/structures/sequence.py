@@ -6,7 +6,11 @@ from functools import cached_property
 import numpy as np
 from numpy.typing import NDArray
 
-from verifier.kernels.autocorrelation import patched_autocorrelation, periodic_autocorrelation
+from verifier.kernels.autocorrelation import (
+    differing_places,
+    patched_autocorrelation,
+    periodic_autocorrelation,
+)
 from verifier.structures.character import Character
 
 
@@ -34,14 +38,14 @@ class BinarySequence:
         return self.near_autocorrelation(self.signs)
 
     def near_autocorrelation(self, row: NDArray[np.int8]) -> NDArray[np.int64]:
-        """Return the periodic autocorrelation of a row that may differ from the terms in places."""
-        if self.character is not None:
-            found = patched_autocorrelation(
-                self.character.values, self.character.autocorrelation, row
-            )
-            if found is not None:
-                return found
-        return periodic_autocorrelation(row)
+        """Return the periodic autocorrelation of a row that may differ from the terms in places.
+
+        Cost: one product, or less where the row is close to the character's values.
+        """
+        if self.character is None or differing_places(self.character.values, row) is None:
+            return periodic_autocorrelation(row)
+        values, known = self.character.values, self.character.autocorrelation
+        return patched_autocorrelation(values, known, row)
 
     def with_indices(self, first: int, last: int) -> "BinarySequence":
         """Return the terms at the places first, ..., last of the periodic continuation."""
