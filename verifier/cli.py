@@ -183,7 +183,7 @@ def recheck(results: Path, budget: int) -> int:
     Exit status: 0 accepted, 5 a certificate or digest does not check, 3 something exceeded the
     budget.
     """
-    from verifier.recheck.__main__ import main as check_again
+    from verifier.recheck.check import main as check_again
 
     if not results.is_dir():
         raise CaseError(f"{results}: no such folder; a results folder was wanted")

@@ -54,7 +54,7 @@ def _used(case: Case) -> tuple[str, ...]:
     wanted: set[str] = set()
     for condition in _conditions(case):
         wanted |= names(condition.tree)
-    for name in reversed(case.define):
+    for name in reversed(list(case.define)):
         if name in wanted:
             wanted |= names(case.define[name].tree)
     return tuple(name for name in case.define if name in wanted)

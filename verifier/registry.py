@@ -226,7 +226,7 @@ def quantity(  # noqa: PLR0913 an entry has that many facts, all by keyword
     return enter
 
 
-def predicate(
+def predicate(  # noqa: PLR0913 an entry has that many facts, all by keyword
     name: str,
     *,
     definition: str,

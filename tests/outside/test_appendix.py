@@ -12,9 +12,7 @@ from math import isqrt
 import pytest
 
 from verifier import catalogue
-from verifier.appendix.bibtex import read_bibtex
 from verifier.appendix.compile import compile_pdf
-from verifier.appendix.escape import unprintable
 from verifier.appendix.write import appendix_text, bibliography_text
 from verifier.case.case import (
     Case,
@@ -30,6 +28,8 @@ from verifier.case.case import (
 from verifier.errors import ToolError
 from verifier.expressions.parse import parse
 from verifier.registry import GRAPHS, PREDICATES, QUANTITIES, RULES
+from verifier.typography.bibtex import read_bibtex
+from verifier.typography.escape import unprintable
 
 requires_latex = pytest.mark.skipif(
     shutil.which("pdflatex") is None and "CI" not in os.environ,

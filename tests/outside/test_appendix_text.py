@@ -13,14 +13,14 @@ from jinja2 import TemplateNotFound, UndefinedError
 
 from verifier.appendix import identities
 from verifier.appendix.bibliography import bib_text, item, published
-from verifier.appendix.bibtex import check_bibtex, decoded, read_bibtex
 from verifier.appendix.constants import constant_remark
 from verifier.appendix.environment import environment, read_template
-from verifier.appendix.escape import LETTERS, Latex, plain, tex, unprintable
-from verifier.appendix.maths import COMMANDS, SYMBOLS, check_head, check_maths, head
 from verifier.appendix.polynomials import polynomial
 from verifier.appendix.values import digits, rounded, short, value
 from verifier.expressions.parse import parse
+from verifier.typography.bibtex import check_bibtex, decoded, read_bibtex
+from verifier.typography.escape import LETTERS, Latex, plain, tex, unprintable
+from verifier.typography.maths import COMMANDS, SYMBOLS, check_head, check_maths, head
 
 requires_latex = pytest.mark.skipif(
     shutil.which("pdflatex") is None and "CI" not in os.environ,

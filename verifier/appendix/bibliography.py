@@ -4,11 +4,11 @@ import re
 from collections.abc import Iterable, Mapping, Sequence
 from functools import cache
 
-from verifier.appendix.bibtex import Entry, check_bibtex, read_bibtex
 from verifier.appendix.environment import read_template
-from verifier.appendix.escape import Latex, accented, tex
 from verifier.case.case import Case
 from verifier.errors import CaseError
+from verifier.typography.bibtex import Entry, check_bibtex, read_bibtex
+from verifier.typography.escape import Latex, accented, tex
 
 COMMON = "common-practice"  # the source of what no paper introduced
 HARD_AND = "\u00a0and\u00a0"  # inside one name, where it separates no authors

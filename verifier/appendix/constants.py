@@ -4,8 +4,8 @@ from typing import Any
 
 import sympy
 
-from verifier.appendix.escape import Latex
 from verifier.expressions.tree import Binary, Call, Negative, Number, Relation, Tree
+from verifier.typography.escape import Latex
 
 Expression = Any  # sympy ships no types
 MOST_ROOTS = 3

@@ -3,10 +3,10 @@
 from collections.abc import Callable
 
 from verifier.appendix.environment import has_template, render
-from verifier.appendix.escape import Latex, tex
 from verifier.appendix.polynomials import polynomial
 from verifier.case.case import Case, Condition, GraphTable, SequenceTable, Setting
 from verifier.registry import GRAPHS, RULES
+from verifier.typography.escape import Latex, tex
 
 Cite = Callable[..., Latex]
 

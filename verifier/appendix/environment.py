@@ -6,7 +6,7 @@ from pathlib import Path
 
 from jinja2 import Environment, FunctionLoader, StrictUndefined, TemplateNotFound, Undefined
 
-from verifier.appendix.escape import Latex, tex
+from verifier.typography.escape import Latex, tex
 
 
 def template_root() -> Traversable:

@@ -3,11 +3,11 @@ r"""Expressions of a case as formulas: set as maths where they fit, else as they
 import re
 from collections.abc import Mapping, Sequence
 
-from verifier.appendix.escape import Latex, plain, tex, tex_keeping_blanks
 from verifier.appendix.values import run
 from verifier.case.case import Case, Condition
 from verifier.expressions.latex import to_latex
 from verifier.registry import PREDICATES, QUANTITIES
+from verifier.typography.escape import Latex, plain, tex, tex_keeping_blanks
 
 AFTER = re.compile(r"[^-+*/^=<>,(_]*(?:[<>!]=|[-+*/^=<>,(_]|$)")  # up to a place to break after
 

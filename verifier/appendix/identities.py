@@ -11,7 +11,7 @@ from typing import Any
 
 import sympy
 
-from verifier.appendix.escape import Latex
+from verifier.typography.escape import Latex
 
 Expression = Any  # sympy ships no types
 

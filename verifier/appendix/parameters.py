@@ -2,12 +2,12 @@
 
 from collections.abc import Mapping
 
-from verifier.appendix.escape import Latex
 from verifier.appendix.polynomials import polynomial
 from verifier.appendix.values import RATIONAL, digits
 from verifier.case.case import Family, Parameter, Polynomials, Primes, Values
 from verifier.expressions.latex import to_latex
 from verifier.expressions.tree import Name
+from verifier.typography.escape import Latex
 
 LISTED = 24
 LONGEST = 200  # as part of the place of an instance; the certificate has it in full

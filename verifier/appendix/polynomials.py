@@ -2,8 +2,8 @@ r"""Polynomials as typed, set as maths that may break between terms."""
 
 import re
 
-from verifier.appendix.escape import Latex, tex
 from verifier.appendix.values import run
+from verifier.typography.escape import Latex, tex
 
 TOKEN = re.compile(r"\s*([0-9]+(?:\.[0-9]+)?|[A-Za-z][A-Za-z0-9_]*|[-+*/^()])")
 SPELT = re.compile(r"[A-Za-z][A-Za-z0-9]*")

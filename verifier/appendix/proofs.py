@@ -3,7 +3,6 @@
 from collections.abc import Callable, Iterator, Sequence
 
 from verifier.appendix.environment import render
-from verifier.appendix.escape import Latex
 from verifier.appendix.facts import (
     Certificate,
     Facts,
@@ -13,6 +12,7 @@ from verifier.appendix.facts import (
 )
 from verifier.appendix.identities import printed
 from verifier.appendix.parameters import places
+from verifier.typography.escape import Latex
 
 Cite = Callable[..., Latex]
 

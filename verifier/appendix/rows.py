@@ -4,13 +4,13 @@ import hashlib
 from collections.abc import Callable, Mapping, Sequence
 from typing import Any
 
-from verifier.appendix.escape import Latex, tex
 from verifier.appendix.facts import Certificate, base
 from verifier.appendix.parameters import place
 from verifier.appendix.values import value
 from verifier.appendix.verdicts import verdict
 from verifier.case.case import Case
 from verifier.certificate import canonical_text
+from verifier.typography.escape import Latex, tex
 
 MOST = 5000
 EXTREMES = 50

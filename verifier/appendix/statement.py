@@ -6,7 +6,6 @@ from typing import Any
 from verifier.appendix.bibliography import Citations
 from verifier.appendix.constants import constant_remark
 from verifier.appendix.environment import has_template, render
-from verifier.appendix.escape import Latex, tex
 from verifier.appendix.facts import Facts, base
 from verifier.appendix.formulas import Formulas, typed
 from verifier.appendix.identities import Discriminant, discriminant
@@ -17,6 +16,7 @@ from verifier.case.case import Case, Claim, Polynomials
 from verifier.errors import VerifierError
 from verifier.expressions.polynomial import coefficients
 from verifier.registry import PREDICATES, QUANTITIES, Predicate, Quantity
+from verifier.typography.escape import Latex, tex
 
 LETTERS = {"order": ("l",), "integer": ("a", "b"), "place": ("A", "B"), "polynomial": ("f", "g")}
 SIZES = {

@@ -3,13 +3,13 @@
 from collections.abc import Mapping, Sequence
 from typing import Any
 
-from verifier.appendix.escape import Latex, tex
 from verifier.appendix.facts import Certificate
-from verifier.appendix.maths import head
 from verifier.appendix.polynomials import polynomial
 from verifier.appendix.values import DECIMAL, GROUP, RATIONAL, cell
 from verifier.appendix.verdicts import verdict
 from verifier.case.case import Case, Table
+from verifier.typography.escape import Latex, tex
+from verifier.typography.maths import head
 
 MOST = 500
 DIFFERENCES = 50

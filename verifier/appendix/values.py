@@ -9,8 +9,8 @@ from collections.abc import Mapping
 from fractions import Fraction
 from math import ceil, floor
 
-from verifier.appendix.escape import Latex, tex
 from verifier.records import Json
+from verifier.typography.escape import Latex, tex
 
 BREAK = "\\allowbreak "
 GROUP = 3

@@ -4,12 +4,12 @@ import re
 from collections.abc import Callable, Mapping, Sequence
 from typing import Any
 
-from verifier.appendix.escape import Latex, tex
 from verifier.appendix.facts import Certificate, base
 from verifier.appendix.parameters import place
 from verifier.appendix.values import short, value
 from verifier.case.case import Case, Condition
 from verifier.registry import PREDICATES, QUANTITIES
+from verifier.typography.escape import Latex, tex
 
 MARKED = {"fails": r"\primewisefails{}", "open": r"\primewiseopen{}"}
 EMPTY = "holds, but says nothing here: the bound exceeds the trivial maximum"

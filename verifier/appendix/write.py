@@ -7,7 +7,6 @@ from verifier import __version__
 from verifier.appendix.bibliography import Citations, bib_text, entries, item
 from verifier.appendix.construction import graph_sentences, sequence_sentences
 from verifier.appendix.environment import render
-from verifier.appendix.escape import Latex, plain, tex
 from verifier.appendix.facts import Certificate, Facts, in_order
 from verifier.appendix.formulas import Formulas, typed
 from verifier.appendix.parameters import parameter_sentence
@@ -29,6 +28,7 @@ from verifier.appendix.statement import (
 from verifier.appendix.tables import case_tables
 from verifier.appendix.verdicts import failure_groups, summary_rows, tightest_sentences
 from verifier.case.case import Case
+from verifier.typography.escape import Latex, plain, tex
 
 PACKAGES = ("amsmath", "amssymb", "amsthm", "booktabs", "longtable", "array", "xcolor", "url")
 LONGEST_LINE = 180

@@ -82,10 +82,9 @@ def _first_mention(lines: Sequence[str], path: Path) -> int:
 def _reaches(document: object, path: Path) -> bool:
     found = document
     for step in path:
-        if isinstance(found, dict) and step in found:
-            found = found[step]
-        elif isinstance(found, list) and isinstance(step, int) and step < len(found):
-            found = found[step]
-        else:
+        if isinstance(found, list):
+            found = dict(enumerate(found))
+        if not isinstance(found, dict) or step not in found:
             return False
+        found = found[step]
     return True

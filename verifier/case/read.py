@@ -7,22 +7,20 @@ from typing import Any
 
 from pydantic import ValidationError
 
-from verifier.appendix.escape import unprintable
-from verifier.appendix.maths import check_head, check_maths
 from verifier.case.case import Case, Claim, Condition, Source, Table
 from verifier.case.check import Names, check_condition, check_measured, check_value, check_where
+from verifier.case.construction import read_graph, read_sequence
 from verifier.case.model import CaseFile
+from verifier.case.parameters import read_parameters
 from verifier.case.problems import Problems
-from verifier.case.sections import (
-    Section,
-    read_graph,
-    read_parameters,
-    read_sequence,
-)
+from verifier.case.section import Section
 from verifier.case.shapes import shape_problems
 from verifier.errors import CaseError, ExpressionError
 from verifier.expressions.names import expand
 from verifier.expressions.parse import parse
+from verifier.typography.bibtex import check_bibtex
+from verifier.typography.escape import unprintable
+from verifier.typography.maths import check_head, check_maths
 
 LARGEST = 1 << 20
 
@@ -155,7 +153,7 @@ class _Reader:
             (["source", key, "bibtex"], source.bibtex or "") for key, source in raw.source.items()
         ]
         for path, text in texts:
-            bad = unprintable(text)
+            bad = check_bibtex(text) if path[-1] == "bibtex" and text else unprintable(text)
             if bad is not None:
                 self.problems.add(path, f"{path[-1]}: {bad}")
 

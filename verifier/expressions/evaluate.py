@@ -164,28 +164,36 @@ def _call(name: str, arguments: Sequence[Tree], scope: Scope) -> Real:
         for other in found[1:]:
             least = _MANY[name](least, other)
         return least
-    match name:
-        case "round":
-            digits = _integer(value(arguments[1], scope), "round")
-            return reals.rounded(value(arguments[0], scope), digits)
-        case "factorial":
-            return _factorial(_integer(value(arguments[0], scope), "factorial"))
-        case "binomial":
-            top, below = (_integer(value(argument, scope), "binomial") for argument in arguments)
-            return _binomial(top, below)
-        case "chi":
-            return Fraction(scope.chi(_integer(value(arguments[0], scope), "chi")))
-        case "leading":
-            return Fraction(scope.leading())
-        case "value":
-            return Fraction(scope.value(_integer(value(arguments[1], scope), "value")))
-        case "disc":
-            return Fraction(scope.discriminant())
+    if name == "round":
+        digits = _integer(arguments[1], scope, "round")
+        return reals.rounded(value(arguments[0], scope), digits)
+    if name in _WHOLE:
+        return Fraction(_of_integers(name, arguments, scope))
     return scope.quantity(name, arguments)
 
 
-def _integer(found: Real, name: str) -> int:
-    exact = rational_value(found)
+_WHOLE = frozenset({"factorial", "binomial", "chi", "leading", "value", "disc"})
+
+
+def _of_integers(name: str, arguments: Sequence[Tree], scope: Scope) -> Fraction | int:
+    """Return the value of a function of integers, or of the polynomial f at one."""
+    match name:
+        case "factorial":
+            return _factorial(_integer(arguments[0], scope, name))
+        case "binomial":
+            top, below = (_integer(argument, scope, name) for argument in arguments)
+            return _binomial(top, below)
+        case "chi":
+            return scope.chi(_integer(arguments[0], scope, name))
+        case "value":
+            return scope.value(_integer(arguments[1], scope, name))
+        case "leading":
+            return scope.leading()
+    return scope.discriminant()
+
+
+def _integer(tree: Tree, scope: Scope, name: str) -> int:
+    exact = rational_value(value(tree, scope))
     if exact is None or exact.denominator != 1:
         raise UndefinedError(f"undefined: {name} wants an integer")
     return exact.numerator

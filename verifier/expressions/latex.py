@@ -62,7 +62,7 @@ class _Printer:
         self.notation = notation
         self.symbols = symbols
 
-    def printed(self, tree: Tree) -> tuple[str, int]:
+    def printed(self, tree: Tree) -> tuple[str, int]:  # noqa: PLR0911 one line a node
         if isinstance(tree, Name | Call):
             return self._mention(tree)
         match tree:

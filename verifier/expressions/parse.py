@@ -324,7 +324,7 @@ class _Parser:
             self._close()
             self.depth -= 1
             return inner
-        self._refuse(f"{self._shown()} stands there; a number, a name or ( was wanted")
+        return self._refuse(f"{self._shown()} stands there; a number, a name or ( was wanted")
 
     def _call(self, name: str, column: int) -> Tree:
         self._deeper()

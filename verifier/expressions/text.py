@@ -25,7 +25,7 @@ def to_text(tree: Tree) -> str:
     return _printed(tree)[0]
 
 
-def _printed(tree: Tree) -> tuple[str, int]:
+def _printed(tree: Tree) -> tuple[str, int]:  # noqa: C901, PLR0911 one line a node
     """Return the text and how tightly it binds."""
     match tree:
         case Number(value=value):

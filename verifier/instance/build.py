@@ -62,7 +62,7 @@ def build(case: Case, combination: Combination) -> Built:
         character = Character(combination.p, polynomial)
     definition = _conventions(case, combination, polynomial)
     sequence = _sequence(case, combination, polynomial, character, definition)
-    graph = _graph(case, combination, sequence, definition)
+    graph = _graph(case, sequence, definition)
     return Built(Subject(combination.p, polynomial, character, sequence, graph), definition)
 
 
@@ -208,12 +208,7 @@ def _cut(
     return found.mirrored() if case.sequence and case.sequence.symmetrise == "mirror" else found
 
 
-def _graph(
-    case: Case,
-    combination: Combination,
-    sequence: BinarySequence | None,
-    definition: dict[str, str],
-) -> Any:  # noqa: ANN401 any of the graph structures
+def _graph(case: Case, sequence: BinarySequence | None, definition: dict[str, str]) -> Any:  # noqa: ANN401 any of the graph structures
     if case.graph is None:
         return None
     kind = GRAPHS.find(case.graph.kind)

@@ -6,8 +6,8 @@ from verifier.case.case import Condition, Table
 from verifier.case.combinations import Combination
 from verifier.errors import OutsideError
 from verifier.exact.canonical import canonical, rational_text
-from verifier.exact.primes import pratt
 from verifier.exact.nodes import Real
+from verifier.exact.primes import pratt
 from verifier.expressions.evaluate import value
 from verifier.instance.build import Built, build
 from verifier.instance.cells import cell

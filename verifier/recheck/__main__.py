@@ -3,7 +3,8 @@
 import sys
 
 if __name__ == "__main__":
-    sys.path[:] = sys.path[1:]  # no file of the folder may stand in for a module of Python
+    sys.dont_write_bytecode = True
+    del sys.path[0]  # the folder itself: no file of it may stand in for a module of Python
     from .check import main
 
     sys.exit(main(sys.argv[1:]))

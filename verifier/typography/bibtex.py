@@ -5,7 +5,7 @@ import unicodedata
 from collections.abc import Mapping
 from dataclasses import dataclass
 
-from verifier.appendix.escape import ACCENTS, unprintable
+from verifier.typography.escape import ACCENTS, unprintable
 
 KINDS = (
     "article book booklet inbook incollection inproceedings manual mastersthesis misc phdthesis "

@@ -12,7 +12,7 @@ calls no command outside the lists, and cannot stop the LaTeX run.
 import re
 from dataclasses import dataclass
 
-from verifier.appendix.escape import Latex, tex_keeping_blanks, unprintable
+from verifier.typography.escape import Latex, tex_keeping_blanks, unprintable
 
 LONGEST = 120
 DEEPEST = 12

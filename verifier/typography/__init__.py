@@ -1,0 +1,1 @@
+"""What LaTeX may print: text escaped, maths checked, bibliography entries read."""
