@@ -17,9 +17,11 @@ from verifier.exact.nodes import Real
 from verifier.instance.certify import Certified, certify
 from verifier.plan import Plan
 from verifier.progress import Progress
+from verifier.records import Sizes
+from verifier.registry import QUANTITIES
 
-SMALL = 24  # fewer instances than this are quicker without workers
-LARGE_FIELD = 200_000  # unless one of them is large by itself
+OVERHEAD = 2_000_000  # steps that an instance costs beyond its quantities
+WORTH_WORKERS = 1_000_000_000  # steps below which starting workers costs more than they save
 CHUNK = 16
 AHEAD = 4  # chunks that may be in flight for each worker
 
@@ -60,14 +62,28 @@ def _exceeds(ratio: Real, largest: Real) -> bool:
 
 def _certified(plan: Plan, combinations: Sequence[Combination], jobs: int) -> Iterator[Certified]:
     numbered = list(enumerate(combinations))
-    large = any((made.p or 0) > LARGE_FIELD for made in combinations)
-    if jobs == 1 or len(numbered) == 1 or (len(numbered) < SMALL and not large):
+    work = _steps(plan, combinations)
+    if jobs == 1 or len(numbered) == 1 or work < WORTH_WORKERS:
         for index, combination in numbered:
             yield certify(plan, combination, index)
         return
-    size = 1 if large else max(1, min(CHUNK, len(numbered) // (4 * jobs)))
+    heavy = work // len(numbered) > WORTH_WORKERS // CHUNK
+    size = 1 if heavy else max(1, min(CHUNK, len(numbered) // (4 * jobs)))
     batches = [numbered[i : i + size] for i in range(0, len(numbered), size)]
     yield from _in_pool(plan, batches, min(jobs, len(batches)))
+
+
+def _steps(plan: Plan, combinations: Sequence[Combination]) -> int:
+    """Return a rough number of steps of all instances, for the choice of workers alone."""
+    entries = [QUANTITIES.entries[name] for name, _ in plan.measured if name in QUANTITIES.entries]
+    total = 0
+    for combination in combinations:
+        size = max([combination.p or 0, *combination.numbers.values()])
+        costs = [
+            entry.cost(Sizes(size, size, size), *(2 for _ in entry.arguments)) for entry in entries
+        ]
+        total += OVERHEAD + sum(cost.steps for cost in costs)
+    return total
 
 
 def _in_pool(plan: Plan, batches: Sequence[Batch], jobs: int) -> Iterator[Certified]:

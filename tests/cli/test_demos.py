@@ -32,6 +32,18 @@ def test_status_and_identical_folders(name, cases, tmp_path, results):
         assert digests(out) == digests(results / name)
 
 
+def test_workers_give_the_same_bytes(cases, tmp_path, results, monkeypatch):
+    """Small cases run in one process whatever --jobs says, so the workers are forced here."""
+    import verifier.pool
+
+    monkeypatch.setattr(verifier.pool, "WORTH_WORKERS", 0)
+    out = tmp_path / "out"
+    CliRunner().invoke(
+        main, ["check", str(cases / "quartic-plan.toml"), "--out", str(out), "--jobs", "2"]
+    )
+    assert digests(out) == digests(results / "quartic-plan")
+
+
 def test_an_older_folder_is_replaced_whole(cases, tmp_path):
     out = tmp_path / "out"
     for name in ("paley", "surveyed-plan"):

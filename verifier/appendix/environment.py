@@ -1,5 +1,6 @@
 """The template environment: LaTeX delimiters, nothing undefined, nothing printed by accident."""
 
+from functools import cache
 from importlib.resources import files
 from importlib.resources.abc import Traversable
 from pathlib import Path
@@ -65,8 +66,9 @@ def exact_only(value: object) -> object:
     raise TypeError(f"template printed {value!r}; an appendix prints integers, text and LaTeX only")
 
 
+@cache
 def environment() -> Environment:
-    """Return the environment; templates lie in the folder `templates`."""
+    """Return the environment, made once; templates lie in the folder `templates`."""
     return Environment(
         loader=FunctionLoader(read_template),
         undefined=StrictUndefined,

@@ -155,5 +155,5 @@ def _sides(judged: Mapping[str, Any], typed: Callable[[str], Latex]) -> tuple[La
 
 def _verdict(judged: Mapping[str, Any]) -> Latex:
     if judged["trivial"]:
-        return Latex("holds, but says nothing")
+        return Latex(r"holds\textsuperscript{\textdegree}")
     return verdict(judged["verdict"])

@@ -2,6 +2,7 @@
 
 from collections.abc import Mapping, Set
 from dataclasses import replace
+from functools import lru_cache
 
 from verifier.expressions.parse import check_size
 from verifier.expressions.text import to_text
@@ -73,7 +74,10 @@ def is_condition(tree: Tree, predicates: Set[str]) -> bool:
     return isinstance(tree, Relation | Not | And | Or)
 
 
-def closed_parts(tree: Tree, known: Set[str], *, conditions: bool = False) -> list[Tree]:
+@lru_cache(maxsize=4096)
+def closed_parts(
+    tree: Tree, known: frozenset[str], *, conditions: bool = False
+) -> tuple[Tree, ...]:
     """Return the largest parts that speak of `known` names and functions of numbers alone.
 
     Parameters
@@ -87,28 +91,18 @@ def closed_parts(tree: Tree, known: Set[str], *, conditions: bool = False) -> li
     """
     whole = conditions or not isinstance(tree, Relation | Not | And | Or)
     if whole and _closed(tree, known):
-        return [tree]
-    return [
+        return (tree,)
+    return tuple(
         found
         for part in children(tree)
         for found in closed_parts(part, known, conditions=conditions)
-    ]
+    )
 
 
 FUNCTIONS = frozenset(
     {
-        "sqrt",
-        "log",
-        "exp",
-        "floor",
-        "ceil",
-        "abs",
-        "min",
-        "max",
-        "binomial",
-        "factorial",
-        "round",
-        "chi",
+        *("sqrt", "log", "exp", "floor", "ceil", "abs", "min", "max", "round"),
+        *("binomial", "factorial", "chi"),
     }
 )
 

@@ -1,6 +1,6 @@
 """What is decided about a combination before anything is measured."""
 
-from collections.abc import Iterator, Sequence, Set
+from collections.abc import Iterator, Sequence
 
 from verifier.case.case import Case, Condition
 from verifier.case.combinations import Combination
@@ -44,7 +44,9 @@ def _true(condition: Condition, scope: InstanceScope) -> bool:
     return judged.verdict == "holds"
 
 
-def refuse_undefined(case: Case, combination: Combination, scope: Scope, names: Set[str]) -> None:
+def refuse_undefined(
+    case: Case, combination: Combination, scope: Scope, names: frozenset[str]
+) -> None:
     """Refuse a claim or table whose parts in `names` alone have no value at a combination.
 
     Claims that a condition in these names alone puts outside are not asked.
@@ -80,16 +82,16 @@ def refuse_undefined(case: Case, combination: Combination, scope: Scope, names: 
 def refuse_before_building(case: Case, combinations: Sequence[Combination]) -> None:
     """Refuse undefined parts in parameters alone, for all combinations, before any is built."""
     for combination in combinations:
-        names = {*combination.numbers, *(("p", "q") if combination.p else ())}
+        names = frozenset({*combination.numbers, *(("p", "q") if combination.p else ())})
         refuse_undefined(case, combination, ParameterScope(combination), names)
 
 
 def refuse_before_measuring(case: Case, combination: Combination, scope: InstanceScope) -> None:
     """Refuse undefined parts in parameters and sizes, before anything is measured."""
-    refuse_undefined(case, combination, scope, {*combination.numbers, *scope.known})
+    refuse_undefined(case, combination, scope, frozenset({*combination.numbers, *scope.known}))
 
 
-def _asked(case: Case, scope: Scope, names: Set[str]) -> Iterator[tuple[str, Condition]]:
+def _asked(case: Case, scope: Scope, names: frozenset[str]) -> Iterator[tuple[str, Condition]]:
     for claim in case.claims:
         if all(_may_hold(condition, scope, names) for condition in claim.given):
             yield f"claim {claim.name}", claim.says
@@ -100,7 +102,7 @@ def _asked(case: Case, scope: Scope, names: Set[str]) -> Iterator[tuple[str, Con
             yield f"table {table.name}", column
 
 
-def _may_hold(condition: Condition, scope: Scope, names: Set[str]) -> bool:
+def _may_hold(condition: Condition, scope: Scope, names: frozenset[str]) -> bool:
     """Return False where a condition in the names alone is false."""
     parts = closed_parts(condition.expanded, names, conditions=True)
     if condition.expanded not in parts:
