@@ -102,6 +102,7 @@ def check(cases: tuple[Path, ...], out: Path | None, jobs: int | None, *, as_jso
     Exit status: 0 everything holds, 4 a claim fails or a table cell differs, 3 something is open,
     2 the input is wrong.
     """
+    from verifier.expressions.text import to_text
     from verifier.report import report_text
     from verifier.run import check_case, read_all
 
@@ -112,7 +113,8 @@ def check(cases: tuple[Path, ...], out: Path | None, jobs: int | None, *, as_jso
         if as_json:
             click.echo(_canonical(summary))
         else:
-            click.echo(report_text(case.title, summary, _accent))
+            says = {claim.name: to_text(claim.says.expanded) for claim in case.claims}
+            click.echo(report_text(case.title, says, summary, _accent))
             click.echo(f"results in {folder}")
         found = max(found, STATUS[summary["verdict"]])
     return found

@@ -1,6 +1,7 @@
 """The terminal's short text about one run, from the summary alone."""
 
 from collections.abc import Callable, Iterator, Mapping
+from itertools import takewhile
 from typing import Any
 
 Emphasis = Callable[[str], str]
@@ -16,22 +17,28 @@ CAUTIONS = (
 )
 
 
-def report_text(title: str, summary: Mapping[str, Any], emphasise: Emphasis) -> str:
+def report_text(
+    title: str, says: Mapping[str, str], summary: Mapping[str, Any], emphasise: Emphasis
+) -> str:
     """Return the report of a run.
 
     Parameters
     ----------
     title
         The title of the case.
+    says
+        What each claim says, by its name.
     summary
         As in `summary.json`.
     emphasise
         Gives a piece of text the one accent, or returns it as it is.
     """
-    return "\n".join(_lines(title, summary, emphasise))
+    return "\n".join(_lines(title, says, summary, emphasise))
 
 
-def _lines(title: str, summary: Mapping[str, Any], emphasise: Emphasis) -> Iterator[str]:
+def _lines(
+    title: str, says: Mapping[str, str], summary: Mapping[str, Any], emphasise: Emphasis
+) -> Iterator[str]:
     count = len(summary["instances"])
     plural = "instance" if count == 1 else "instances"
     yield f"{summary['case']}: {title} ({count} {plural}): {_accent(summary['verdict'], emphasise)}"
@@ -41,7 +48,7 @@ def _lines(title: str, summary: Mapping[str, Any], emphasise: Emphasis) -> Itera
     for table in summary["tables"]:
         yield f"  {table['name']:<{width}}  {_table(table, emphasise)}"
     for claim in summary["claims"]:
-        yield from _failures(claim, summary, emphasise)
+        yield from _failures(claim, says[claim["name"]], summary, emphasise)
     for table in summary["tables"]:
         yield from (_difference(table["name"], cell) for cell in table["differences"][:10])
 
@@ -78,29 +85,32 @@ def _table(table: Mapping[str, Any], emphasise: Emphasis) -> str:
 
 
 def _failures(
-    claim: Mapping[str, Any], summary: Mapping[str, Any], emphasise: Emphasis
+    claim: Mapping[str, Any], says: str, summary: Mapping[str, Any], emphasise: Emphasis
 ) -> Iterator[str]:
     failures = claim["failures"]
     if failures["count"]:
         first, last = place(failures["first"]), place(failures["last"])
         beyond = failures["holds_from"]
         tail = f"; holds from {beyond} on within this range" if beyond else ""
-        yield (
-            f"  {emphasise(FAILING)} {claim['name']} fails at {failures['count']} instances, "
-            f"first {first}, last {last}{tail}"
-        )
-        yield from _witness(claim["name"], summary, "fails")
+        count = failures["count"]
+        where = f"at {first}" if count == 1 else f"at {count} instances, first {first}, last {last}"
+        yield f"  {emphasise(FAILING)} {claim['name']} fails {where}{tail}"
+        yield from _witness(claim["name"], says, summary, "fails")
     if claim["open"]:
-        yield from _witness(claim["name"], summary, "open")
+        yield f"  {emphasise(OPEN)} {claim['name']} is open at {claim['open']} of the instances"
+        yield from _witness(claim["name"], says, summary, "open")
 
 
-def _witness(name: str, summary: Mapping[str, Any], verdict: str) -> Iterator[str]:
+def _witness(name: str, says: str, summary: Mapping[str, Any], verdict: str) -> Iterator[str]:
+    """Yield the first instance with a verdict, and where its maxima are attained."""
     for instance in summary["instances"]:
         judged = instance["claims"][name]
         if judged["verdict"] != verdict:
             continue
         yield f"      at {place(instance['parameters'])}: {sentence(judged)}"
         for quantity, witness in instance["witnesses"].items():
+            if quantity.partition("(")[0] not in says:
+                continue
             yield f"      {quantity} is attained at ({', '.join(witness)})"
         return
 
@@ -128,15 +138,17 @@ def place(parameters: Mapping[str, str]) -> str:
 
 
 def number(value: str | Mapping[str, str] | bool | None) -> str:  # noqa: FBT001 a JSON value
-    """Return a canonical value for reading: an enclosure by its ends.
+    """Return a canonical value for reading: an enclosure by the digits that its ends share.
 
     Examples
     --------
     >>> number({"lower": "1.41421356237", "upper": "1.41421356238"})
-    '1.41421356237..1.41421356238'
+    '1.4142135623...'
     """
     if isinstance(value, Mapping):
-        return "..".join(value.values())
+        pairs = zip(*value.values(), strict=False)
+        shared = "".join(pair[0] for pair in takewhile(lambda pair: pair[0] == pair[1], pairs))
+        return f"{shared}..." if "." in shared else "..".join(value.values())
     if isinstance(value, bool):
         return "true" if value else "false"
     return "none" if value is None else value

@@ -106,7 +106,7 @@ def test_listed_polynomials_are_echoed_and_may_name_numbers(tmp_path):
     rest = '[sequence]\nrule = "legendre"\npolynomial = "f"\n'
     found = instances(
         tmp_path,
-        'p = { values = [7] }\nf = { polynomials = ["x^2  + a"] }\na = { values = [1, 2] }\nwhere = ["k = 2", "r = 0"]\n',
+        'p = { values = [7] }\nf = { polynomials = ["x^2  + a"] }\na = { values = [1, 3] }\nwhere = ["k = 2", "r = 0"]\n',
         rest,
     )
     assert [dict(made.texts) for made in found] == [{"p": "7", "f": "x^2  + a", "a": "1"}]
