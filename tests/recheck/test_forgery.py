@@ -13,7 +13,7 @@ import shutil
 import pytest
 
 from verifier.progress import silent
-from verifier.recheck.__main__ import main as recheck
+from verifier.recheck.check import main as recheck
 from verifier.run import check_case, read_all
 
 CASE = """format = 1

@@ -15,7 +15,6 @@ def compiled(function: Callable[P, R]) -> Callable[P, R]:
     Integer arithmetic inside wraps at 64 bits or less: every such function states its bounds.
     """
     try:
-        made = njit(cache=True)(function)
+        return cast("Callable[P, R]", njit(cache=True)(function))
     except RuntimeError:  # no folder for the cache can be written
-        made = njit(function)
-    return cast("Callable[P, R]", made)
+        return cast("Callable[P, R]", njit(function))

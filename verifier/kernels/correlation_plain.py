@@ -42,9 +42,7 @@ def _beginnings(count: int, order: int) -> list[tuple[int, ...]]:
     return [()] if order == 2 else [(t,) for t in range(1, count)]
 
 
-def _ranges(
-    word: NDArray[np.int8], signs: NDArray[np.int8], first: int
-) -> NDArray[np.int32]:
+def _ranges(word: NDArray[np.int8], signs: NDArray[np.int8], first: int) -> NDArray[np.int32]:
     """Return the largest window sum of word[x] signs[x + t] for t = first, ..., N - 1.
 
     Beyond the end of the signs stand zeros, which change no window sum.

@@ -1,10 +1,10 @@
 """The correlation measure of order 3, on products of packed rows; bounds as for order 2."""
 
 import numpy as np
-from verifier.kernels.compiled import compiled
 from numpy.typing import NDArray
 
-from verifier.kernels.packed import ones, packed_from
+from verifier.kernels.compiled import compiled
+from verifier.kernels.packed import ones, packed_from, packed_range
 
 
 def correlation_three(signs: NDArray[np.int8]) -> tuple[int, list[tuple[int, ...]]]:
@@ -27,35 +27,35 @@ def correlation_three(signs: NDArray[np.int8]) -> tuple[int, list[tuple[int, ...
 
 
 @compiled
-def _bound(word: NDArray[np.uint64], row: NDArray[np.uint64], length: int) -> int:
-    total = high = low = 0
+def _bound(word: NDArray[np.uint64], row: NDArray[np.uint64], length: int) -> np.int64:
+    total = high = low = np.int64(0)
     for j in range(length >> 6):
         total += 32 - np.int64(ones(word[j] ^ row[j]))
         high = max(high, total)
         low = min(low, total)
-    return 2 * (high - low) + 2 * max(32, length & 63)
+    return np.int64(2 * (high - low) + 2 * max(32, length & 63))
 
 
 @compiled
-def _window(
-    word: NDArray[np.uint64], row: NDArray[np.uint64], length: int
-) -> tuple[int, int]:
-    """Return the range of the partial sums, and the first place where one is extreme."""
-    total = high = low = high_place = low_place = 0
+def _first_extreme(word: NDArray[np.uint64], row: NDArray[np.uint64], length: int) -> int:
+    """Return the first place where a partial sum is the largest or the least of all."""
+    total = high = low = np.int64(0)
+    high_place = low_place = 0
     for x in range(length):
         bit = ((word[x >> 6] ^ row[x >> 6]) >> np.uint64(x & 63)) & np.uint64(1)
-        total += 1 - 2 * np.int64(bit)
+        total += np.int64(1) - 2 * np.int64(bit)
         if total > high:
             high, high_place = total, x + 1
         if total < low:
             low, low_place = total, x + 1
-    return high - low, min(high_place, low_place)
+    return min(high_place, low_place)
 
 
 @compiled
-def _largest(rows: NDArray[np.uint64], count: int) -> tuple[int, int, int]:
+def _largest(rows: NDArray[np.uint64], count: int) -> tuple[np.int64, int, int]:
     """Return the largest range, and the least pair of lags among those with the earliest window."""
-    best = first = best_t = best_u = 0
+    best = np.int64(0)
+    first = best_t = best_u = 0
     for t in range(1, count):
         word = rows[0] ^ rows[t]
         for u in range(t + 1, count):
@@ -64,7 +64,10 @@ def _largest(rows: NDArray[np.uint64], count: int) -> tuple[int, int, int]:
                 break
             if _bound(word, rows[u], count - u) < wanted:
                 continue
-            value, place = _window(word, rows[u], count - u)
-            if value > best or (value == best and place < first):
+            value = packed_range(word, rows[u], count - u)
+            if value < wanted:
+                continue
+            place = _first_extreme(word, rows[u], count - u)
+            if value > best or place < first:
                 best, first, best_t, best_u = value, place, t, u
     return best, best_t, best_u

@@ -5,15 +5,15 @@ packed terms with those shifted by t. Partial sums at the ends of words come fro
 and bound the range: between two such ends a sum strays by at most 32 from the nearer one, behind
 the last one by the length of the tail. Sums at the ends of words are even and are kept halved, so
 the range is at most 2 (coarse range) + 2 max(32, tail). Only lags whose bound reaches the best
-value so far are summed term by term.
+value so far are summed in full.
 """
 
 import numpy as np
-from verifier.kernels.compiled import compiled
 from numpy.typing import NDArray
 
 from verifier.kernels.autocorrelation import periodic_autocorrelation
-from verifier.kernels.packed import ones, packed_from
+from verifier.kernels.compiled import compiled
+from verifier.kernels.packed import ones, packed_from, packed_range
 
 CANDIDATES = 40
 TILE = 512
@@ -32,9 +32,13 @@ def correlation_two(signs: NDArray[np.int8]) -> tuple[int, list[tuple[int, ...]]
     Cost: about N^2/64 word operations, 8 N bytes. Sums are below N < 2^31 in int32.
     """
     count = len(signs)
-    best = max(int(_range_at(signs, lag)) for lag in _promising(signs))
-    attained: list[int] = []
     words = [packed_from(signs, shift, count // 64 + 2) for shift in range(min(64, count))]
+
+    def value_at(lag: int) -> int:
+        return int(packed_range(words[0], words[lag & 63][lag >> 6 :], count - lag))
+
+    best = max(value_at(lag) for lag in _promising(signs))
+    attained: list[int] = []
     for shift, shifted in enumerate(words):
         full, tail = divmod(count - shift, 64)
         high, low = _coarse(words[0], shifted, full)
@@ -43,7 +47,7 @@ def correlation_two(signs: NDArray[np.int8]) -> tuple[int, list[tuple[int, ...]]
             lag = 64 * block + shift
             if not 0 < lag <= count - best or bound[block] < best:
                 continue
-            value = int(_range_at(signs, lag))
+            value = value_at(lag)
             if value > best:
                 best, attained = value, []
             if value == best:
@@ -56,16 +60,6 @@ def _promising(signs: NDArray[np.int8]) -> list[int]:
     sums = np.abs(periodic_autocorrelation(signs))[1:]
     few = min(CANDIDATES, len(sums))
     return [int(place) + 1 for place in np.argsort(-sums, kind="stable")[:few]]
-
-
-@compiled
-def _range_at(signs: NDArray[np.int8], lag: int) -> int:
-    total = high = low = 0
-    for x in range(signs.shape[0] - lag):
-        total += signs[x] * signs[x + lag]
-        high = max(high, total)
-        low = min(low, total)
-    return high - low
 
 
 @compiled

@@ -8,20 +8,16 @@ from numpy.typing import NDArray
 from verifier.kernels.windows import largest_window, prefix_sums
 
 
-def least_window(
-    signs: NDArray[np.int8], lags: Iterable[tuple[int, ...]], best: int
-) -> tuple[int, ...]:
-    """Return the lexicographically least (d_1, ..., d_l, M) whose sum is `best` in absolute value.
+def least_window(signs: NDArray[np.int8], lags: Iterable[tuple[int, ...]]) -> tuple[int, ...]:
+    """Return the least (d_1, ..., d_l, M) in lexicographic order that attains the measure.
 
     Parameters
     ----------
     signs
         N terms.
     lags
-        Ascending tuples (t_2, ..., t_l) of lags, all those at which the largest window has the
-        value `best` > 0, or the one among them with the least witness.
-    best
-        That value.
+        Ascending tuples (t_2, ..., t_l) of lags: all those whose largest window attains the
+        measure, or the one among them with the least witness.
     """
     found: tuple[int, ...] = ()
     for lag in lags:

@@ -1,9 +1,9 @@
 """Common neighbours of all pairs of vertices of a large graph, compiled and in tiles."""
 
 import numpy as np
-from verifier.kernels.compiled import compiled
 from numpy.typing import NDArray
 
+from verifier.kernels.compiled import compiled
 from verifier.kernels.packed import ones
 from verifier.kernels.pairs import Counts, packed_rows
 
@@ -26,15 +26,15 @@ def matrix_pairs_tiled(entries: NDArray[np.int8], degrees: NDArray[np.int64]) ->
 def _pairs(packed: NDArray[np.uint64], degrees: NDArray[np.int64]) -> NDArray[np.int64]:
     """Return the sums, and the least pairs: ties go to the lesser pair, as tiles mix the order."""
     n, words = packed.shape
-    agreement = codegree = squares = 0
-    least, least_at, most, most_at = n, n * n, -1, n * n
+    agreement = codegree = squares = np.int64(0)
+    least, least_at, most, most_at = np.int64(n), n * n, np.int64(-1), n * n
     for top in range(0, n, TILE):
         for left in range(top, n, TILE):
             for i in range(top, min(n, top + TILE)):
                 row = packed[i]
                 for j in range(max(i, left), min(n, left + TILE)):
                     other = packed[j]
-                    common = 0
+                    common = np.int64(0)
                     for k in range(words):
                         common += np.int64(ones(row[k] & other[k]))
                     weight = 1 if i == j else 2
@@ -50,7 +50,14 @@ def _pairs(packed: NDArray[np.uint64], degrees: NDArray[np.int64]) -> NDArray[np
                         most, most_at = common, place
     return np.array(
         [
-            agreement, codegree, least, least_at // n, least_at % n,
-            most, most_at // n, most_at % n, squares,
+            agreement,
+            codegree,
+            least,
+            least_at // n,
+            least_at % n,
+            most,
+            most_at // n,
+            most_at % n,
+            squares,
         ]
     )

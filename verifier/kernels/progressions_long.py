@@ -1,8 +1,9 @@
 """Ranges of partial sums along progressions, compiled for long sequences."""
 
 import numpy as np
-from verifier.kernels.compiled import compiled
 from numpy.typing import NDArray
+
+from verifier.kernels.compiled import compiled
 
 TILE = 4096
 

@@ -40,7 +40,9 @@ def character_table(p: int) -> NDArray[np.int8]:
 def check_size(p: int) -> None:
     """Refuse a prime too large for a table of all residues."""
     if p > LARGEST:
-        raise LimitError(f"limit: p = {p}, more than {LARGEST}, for the values of f at all residues")
+        raise LimitError(
+            f"limit: p = {p}, more than {LARGEST}, for the values of f at all residues"
+        )
 
 
 def value_blocks(p: int, polynomial: tuple[int, ...]) -> Iterator[tuple[int, NDArray[np.int64]]]:
@@ -68,9 +70,7 @@ def value_blocks(p: int, polynomial: tuple[int, ...]) -> Iterator[tuple[int, NDA
         yield start, value
 
 
-def looked_up(
-    p: int, polynomial: tuple[int, ...], table: NDArray[np.int8]
-) -> NDArray[np.int8]:
+def looked_up(p: int, polynomial: tuple[int, ...], table: NDArray[np.int8]) -> NDArray[np.int8]:
     """Return table[f(0)], ..., table[f(p - 1)], read-only."""
     found = np.empty(p, np.int8)
     for start, values in value_blocks(p, polynomial):

@@ -17,5 +17,15 @@ from verifier.structures.subject import Subject
     maximum=lambda sizes: Fraction(sizes.N),
 )
 def balance(subject: Subject) -> Measurement:
-    """Return the absolute value of the sum of all terms, in 0..N. Cost: N additions."""
+    """Return the absolute value of the sum of all terms.
+
+    Returns
+    -------
+    Measurement
+        value: integer in 0..N, of the parity of N. witness: none.
+
+    Notes
+    -----
+    Cost: N additions.
+    """
     return Measurement(abs(int(sequence_of(subject).signs.sum(dtype="int64"))))

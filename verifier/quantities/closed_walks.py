@@ -21,7 +21,29 @@ from verifier.structures.subject import Subject
     cost=lambda sizes, _: pair_cost(sizes),
 )
 def closed_walks(subject: Subject, length: int) -> Measurement:
-    """Return the trace of A^4: the sum of the squares of all codegrees, i = j included."""
+    """Return the trace of A^4: the sum of the squares of all codegrees, i = j included.
+
+    Parameters
+    ----------
+    subject
+        With a graph on n vertices.
+    length
+        The length of the walks, 4.
+
+    Returns
+    -------
+    Measurement
+        value: integer in 0..(n - 1)^4 + (n - 1). witness: none.
+
+    Raises
+    ------
+    CaseError
+        If the length is another.
+
+    Notes
+    -----
+    Cost: that of the codegrees.
+    """
     if length != 4:
         raise CaseError(f"closed_walks({length}) is not supported; known orders: 4")
     return Measurement(graph_of(subject).pairs.square_sum)

@@ -17,5 +17,17 @@ from verifier.structures.subject import Subject
     maximum=lambda sizes: Fraction(sizes.p),
 )
 def complete_sum(subject: Subject) -> Measurement:
-    """Return the sum of chi(f(x)) over F_p, in -p..p. Cost: p additions."""
+    r"""Return the sum of chi(f(x)) over F_p.
+
+    .. math:: \sum_{x \in \mathbb F_p} \chi(f(x))
+
+    Returns
+    -------
+    Measurement
+        value: integer in -p..p. witness: none.
+
+    Notes
+    -----
+    Cost: p additions.
+    """
     return Measurement(character_of(subject).complete_sum)

@@ -65,7 +65,7 @@ def correlation(subject: Subject, order: int) -> Measurement:
     value, lags = _attained(signs, order)
     if value == 0:
         return Measurement(0)
-    return Measurement(value, least_window(signs, lags, value))
+    return Measurement(value, least_window(signs, lags))
 
 
 def _attained(signs: NDArray[np.int8], order: int) -> tuple[int, list[tuple[int, ...]]]:

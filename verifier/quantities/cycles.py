@@ -22,7 +22,30 @@ from verifier.structures.subject import Subject
     cost=lambda sizes, _: pair_cost(sizes),
 )
 def cycles(subject: Subject, length: int) -> Measurement:
-    """Return the closed 4-walks that do not turn back: tr A^4 - sum d (2 d - 1)."""
+    """Return the number of labelled 4-cycles: tr A^4 - sum d (2 d - 1) over the degrees d.
+
+    Parameters
+    ----------
+    subject
+        With a graph on n vertices.
+    length
+        The length of the cycles, 4.
+
+    Returns
+    -------
+    Measurement
+        value: integer in 0..n (n - 1) (n - 2) (n - 3), 8 times the number of cycles. witness: none.
+
+    Raises
+    ------
+    CaseError
+        If the length is another.
+
+    Notes
+    -----
+    A closed walk i, j, k, m is no cycle where i = k or j = m: 2 sum d^2 - sum d of them. Cost:
+    that of the codegrees.
+    """
     if length != 4:
         raise CaseError(f"cycles({length}) is not supported; known orders: 4")
     graph = graph_of(subject)

@@ -19,6 +19,18 @@ from verifier.structures.subject import Subject
     maximum=lambda sizes: Fraction(sizes.p),
 )
 def incomplete_sum(subject: Subject) -> Measurement:
-    """Return the largest absolute window sum, with the least window."""
+    r"""Return the largest absolute sum over a window of 0..p, with the least window.
+
+    .. math:: \max_{0 \le A \le B \le p} \Bigl|\sum_{A \le x < B} \chi(f(x))\Bigr|
+
+    Returns
+    -------
+    Measurement
+        value: integer in 0..p. witness: the least (A, B); (0, 0) where the value is 0.
+
+    Notes
+    -----
+    The maximum is the range of the prefix sums. Cost: p additions.
+    """
     value, first, end = largest_window(prefix_sums(character_of(subject).values))
     return Measurement(value, (first, end))

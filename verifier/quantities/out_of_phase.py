@@ -19,5 +19,17 @@ from verifier.structures.subject import Subject
     maximum=lambda sizes: Fraction(sizes.N),
 )
 def out_of_phase(subject: Subject) -> Measurement:
-    """Return the largest absolute periodic autocorrelation off 0, with the least d."""
+    r"""Return the largest absolute periodic autocorrelation off 0, with the least d.
+
+    .. math:: \max_{d \ne 0} \Bigl|\sum_x e_x e_{(x + d) \bmod N}\Bigr|
+
+    Returns
+    -------
+    Measurement
+        value: integer in 0..N, 0 where N = 1. witness: d in 1..N - 1, none where N = 1.
+
+    Notes
+    -----
+    Cost: one exact product of two numbers of N digits.
+    """
     return largest_lag(sequence_of(subject).autocorrelation)

@@ -22,7 +22,31 @@ from verifier.structures.subject import Subject
     maximum=lambda sizes, _: Fraction(sizes.p),
 )
 def shifted_sum(subject: Subject, order: int) -> Measurement:
-    """Return the largest |sum chi(f(x) f(x + d))| over d != 0, with the least pair of shifts."""
+    r"""Return the largest complete sum over products of shifts, with the least pair of shifts.
+
+    .. math:: \max_{d_1 < d_2} \Bigl|\sum_{x \in \mathbb F_p} \chi(f(x + d_1) f(x + d_2))\Bigr|
+
+    Parameters
+    ----------
+    subject
+        With a character over F_p.
+    order
+        The number of shifts, 2.
+
+    Returns
+    -------
+    Measurement
+        value: integer in 0..p. witness: (0, d) with the least d, as only differences matter.
+
+    Raises
+    ------
+    CaseError
+        If the order is another.
+
+    Notes
+    -----
+    Cost: one autocorrelation of p entries.
+    """
     if order != 2:
         raise CaseError(f"shifted_sum({order}) is not supported; known orders: 2")
     found = largest_lag(character_of(subject).autocorrelation)

@@ -19,11 +19,29 @@ from verifier.structures.subject import Subject
     maximum=lambda sizes, _, __: Fraction(sizes.p),
 )
 def window_sum(subject: Subject, first: int, end: int) -> Measurement:
-    """Return the sum over first <= x < end, chi(f) continued periodically; 0 for an empty window."""
+    """Return the sum over first <= x < end, chi(f) continued periodically; 0 where there is none.
+
+    Parameters
+    ----------
+    subject
+        With a character over F_p.
+    first, end
+        Any integers.
+
+    Returns
+    -------
+    Measurement
+        value: integer, negative or not. witness: none.
+
+    Notes
+    -----
+    Whole periods contribute the complete sum. Cost: p additions, however long the window.
+    """
     character = character_of(subject)
     if end <= first:
         return Measurement(0)
     sums = prefix_sums(character.values)
-    (turns, place), (turns_before, place_before) = divmod(end, character.p), divmod(first, character.p)
-    whole = (turns - turns_before) * character.complete_sum
-    return Measurement(whole + int(sums[place]) - int(sums[place_before]))
+    turns_to_first, from_place = divmod(first, character.p)
+    turns_to_end, to_place = divmod(end, character.p)
+    whole = (turns_to_end - turns_to_first) * character.complete_sum
+    return Measurement(whole + int(sums[to_place]) - int(sums[from_place]))

@@ -2,60 +2,56 @@
 
 from collections.abc import Iterator, Sequence
 from hashlib import sha256
-from itertools import count, islice
+from itertools import count
+from typing import Any
 
 from .reals import OpenError, RecheckError
 
 Polynomial = list[int]
+BASES = (2, 3, 5, 7, 11, 13, 17, 19, 23, 29, 31, 37, 41)
 
 
 def is_prime(n: int) -> bool:
-    """Tell whether n is prime; proved below 3.3 10^24, above only a no is.
+    """Tell whether n is prime: a no is proved, a yes below 3.3 10^24, above by `pratt` alone.
 
-    Miller's test to the first 13 prime bases: J. Sorenson, J. Webster, Strong pseudoprimes to twelve
-    prime bases, Math. Comp. 86 (2017) 985-1003.
+    Miller's test: J. Sorenson, J. Webster, Math. Comp. 86 (2017) 985-1003, for these bases.
     """
-    bases = (2, 3, 5, 7, 11, 13, 17, 19, 23, 29, 31, 37, 41)
-    if n < 2 or any(n % b == 0 for b in bases):
-        return n in bases
-    twos = (n - 1 & 1 - n).bit_length() - 1
-    for b in bases:
-        powers = [pow(b, n - 1 >> twos - i, n) for i in range(twos)]
-        if powers[0] != 1 and n - 1 not in powers:
-            return False
-    return True
+    if n < 2 or any(n % b == 0 for b in BASES):
+        return n in BASES
+    twos = ((n - 1) & (1 - n)).bit_length() - 1
+    powers = [[pow(b, (n - 1) >> i, n) for i in range(1, twos + 1)] for b in BASES]
+    return all(row[-1] == 1 or n - 1 in row for row in powers)
 
 
-def pratt(p: int, given: object) -> list[list[object]]:
-    """Prove that p is prime and return the canonical proof; of `given` only factorisations are used.
+def pratt(p: int, given: Any) -> list[list[Any]]:
+    """Prove that p is prime, with the factorisations in `given`; return the canonical proof.
 
-    V. Pratt, Every prime has a succinct certificate, SIAM J. Comput. 4 (1975) 214-220: p is prime if
-    g^(p-1) = 1 mod p for some g, but g^((p-1)/r) != 1 for all prime factors r of p - 1.
+    V. Pratt, Every prime has a succinct certificate, SIAM J. Comput. 4 (1975) 214-220: p is prime
+    if g^(p-1) = 1 mod p for some g, but g^((p-1)/r) != 1 for every prime factor r of p - 1.
     """
-    rows = given if isinstance(given, list) else []
-    hints = {row[0]: row[2] for row in rows if isinstance(row, list) and len(row) == 3}
-    proof, wanted = {}, {p} - {2}
+    hints = {row[0]: row[2] for row in given or ()}
+    proof, wanted = [], {p} - {2}
     while wanted:
         n = max(wanted)
-        factors = sorted({int(str(r)) for r in hints.get(str(n), ()) if 1 < int(str(r)) < n})
+        factors = sorted({r for r in map(int, hints.get(str(n), ())) if 1 < r < n})
         rest = n - 1
         for r in factors:
             while rest % r == 0:
                 rest //= r
-        candidates = (g for g in range(2, 10**4) if all(pow(g, n // r, n) != 1 for r in factors))
-        g = next(candidates, 0)
+        fit = (g for g in range(2, 10**4) if all(pow(g, n // r, n) != 1 for r in factors))
+        g = next(fit, 0)
         if rest != 1 or pow(g, n - 1, n) != 1:
             raise RecheckError(f"primality.{p} is no proof that {n} is prime")
-        proof[n] = [str(n), str(g), [str(r) for r in factors]]
-        wanted = (wanted | set(factors)) - set(proof) - {2}
-    return [list(proof[n]) for n in sorted(proof, reverse=True)]
+        proof.append([str(n), str(g), list(map(str, factors))])
+        wanted = (wanted | set(factors)) - {n, 2}
+    return proof
 
 
 def bits(seed: int) -> Iterator[int]:
-    """Yield the documented stream: the bits of SHA-256 of `primewise:SEED:BLOCK`, lowest first."""
+    """Yield the bits of SHA-256 of `primewise:SEED:BLOCK` as a number, the least significant first."""
     for block in count():
-        digest = sha256(f"primewise:{seed}:{block}".encode("ascii")).digest()
-        yield from (digest[i // 8] >> i % 8 & 1 for i in range(256))
+        number = int(sha256(f"primewise:{seed}:{block}".encode("ascii")).hexdigest(), 16)
+        yield from (number >> i & 1 for i in range(256))
 
 
 def reduced(f: Sequence[int], p: int) -> Polynomial:
@@ -82,42 +78,38 @@ def gcd(f: Polynomial, g: Polynomial, p: int) -> Polynomial:
     return f
 
 
-def times(f: Sequence[int], g: Sequence[int]) -> list[int]:
+def times(f: Sequence[Any], g: Sequence[Any]) -> list[Any]:
     """Return the product, not reduced."""
-    product = [0] * (len(f) + len(g))
+    product = [0] * (len(f) + len(g) - 1)
     for i, a in enumerate(f):
         for j, b in enumerate(g):
             product[i + j] += a * b
     return product
 
 
-def to_the_p(h: Polynomial, f: Polynomial, p: int) -> Polynomial:
-    """Return h^p mod f."""
-    result = [1]
-    for bit in bin(p)[2:]:
-        result = remainder(times(result, result), f, p)
-        result = remainder(times(result, h), f, p) if bit == "1" else result
-    return result
-
-
-def common_with_frobenius(f: Polynomial, p: int) -> Iterator[Polynomial]:
-    """Yield gcd(f, x^(p^i) - x) for i = 1, 2, ...: the product of the factors of degree i | d."""
-    power = remainder([0, 1], f, p)
-    while True:
-        power = to_the_p(power, f, p)
-        padded = power + [0] * (2 - len(power))
-        yield gcd(f, reduced([padded[0], padded[1] - 1, *padded[2:]], p), p)
+def derivative(f: Polynomial, p: int) -> Polynomial:
+    """Return f'."""
+    return reduced([i * c for i, c in enumerate(f)][1:], p)
 
 
 def squarefree(f: Polynomial, p: int) -> bool:
     """Tell whether gcd(f, f') = 1."""
-    return len(gcd(f, reduced([i * c for i, c in enumerate(f)][1:], p), p)) == 1
+    return len(gcd(f, derivative(f, p), p)) == 1
 
 
 def irreducible(f: Polynomial, p: int) -> bool:
-    """Tell whether f, of degree >= 1, has no factor of a degree up to half its own (Ben-Or's test)."""
-    halves = islice(common_with_frobenius(f, p), (len(f) - 1) // 2)
-    return len(f) > 1 and all(len(common) == 1 for common in halves)
+    """Tell whether f has nothing in common with x^(p^i) - x for 1 <= i <= k/2 (M. Ben-Or)."""
+    power = [0, 1]
+    for _ in range((len(f) - 1) // 2):
+        base, power = power, [1]
+        for bit in bin(p)[2:]:
+            power = remainder(times(power, power), f, p)
+            power = remainder(times(power, base), f, p) if bit == "1" else power
+        padded = [*power, 0, 0]
+        padded[1] -= 1
+        if len(gcd(f, reduced(padded, p), p)) > 1:
+            return False
+    return len(f) > 1
 
 
 def discriminant(f: Polynomial, p: int) -> int:
@@ -125,11 +117,10 @@ def discriminant(f: Polynomial, p: int) -> int:
 
     res(g, h) = (-1)^(deg g deg h) b^(deg g - deg (g mod h)) res(h, g mod h), b leading in h.
     """
-    k, a = len(f) - 1, f[-1]
+    k, g, h = len(f) - 1, f, derivative(f, p)
     if k < 1:
         raise OpenError("undefined: disc of a polynomial of degree 0")
-    g, h = f, reduced([i * c for i, c in enumerate(f)][1:], p)
-    result = (-1) ** (k * (k - 1) // 2) * pow(a, k - 1 - len(h), p)
+    result = (-1) ** (k * (k - 1) // 2) * pow(f[-1], k - 1 - len(h), p)
     while len(h) > 1:
         rest = remainder(g, h, p)
         result *= (-1) ** ((len(g) - 1) * (len(h) - 1)) * pow(h[-1], len(g) - len(rest), p)
@@ -139,9 +130,8 @@ def discriminant(f: Polynomial, p: int) -> int:
 
 def polynomial_text(f: Polynomial) -> str:
     """Write a polynomial with least residues, `x^4 + 3*x^2 + 1`."""
-    terms = []
-    for i in range(len(f) - 1, -1, -1):
-        power = "x" if i == 1 else f"x^{i}"
-        if f[i]:
-            terms.append(str(f[i]) if i == 0 else power if f[i] == 1 else f"{f[i]}*{power}")
-    return " + ".join(terms) or "0"
+    powers = ["", "x", *(f"x^{i}" for i in range(2, len(f)))]
+    terms = [
+        f"{c}*{x}" if c > 1 and x else x or str(c) for c, x in zip(f, powers, strict=False) if c
+    ]
+    return " + ".join(reversed(terms)) or "0"

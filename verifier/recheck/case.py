@@ -1,4 +1,4 @@
-"""The case: what it says, and its instances in order."""
+"""The case: what it says, and the parameters of its instances in order."""
 
 import ast
 import tomllib
@@ -7,15 +7,16 @@ from itertools import product
 from typing import Any
 
 from . import arithmetic
-from .arithmetic import is_prime, polynomial_text
+from .arithmetic import is_prime
 from .expression import judge, named, parse, subtrees, value
 from .instance import Instance
 from .reals import RecheckError, canonical, integer_root
 
+STRUCTURE = ("zero_one", "zero_diagonal", "symmetric")
 KEYS = {
     "case": "format title about parameters define sequence graph measure claim table source notation",
-    "sweep": "primes prime-powers class values polynomials degree even monic squarefree every sample"
-    " seed",
+    "sweep": "primes prime-powers class values polynomials degree even monic squarefree every"
+    " sample seed",
     "sequence": "rule polynomial at-zero indices symmetrise length seed values file",
     "graph": "kind file form",
     "measure": "quantities",
@@ -36,28 +37,39 @@ class Case:
     """A case file, read; `files` holds the bytes of every file of the folder."""
 
     def __init__(self, files: Mapping[str, bytes], spend: Callable[[int], None]) -> None:
-        data = known(tomllib.loads(files["case.toml"].decode(), parse_float=_refuse), "case")
+        data = known(tomllib.loads(files["case.toml"].decode(), parse_float=str), "case")
         self.files, self.spend = files, spend
         self.parameters = dict(data.get("parameters", {}))
-        where = self.parameters.pop("where", [])
         self.sequence = known(data.get("sequence", {}), "sequence")
         self.graph = known(data.get("graph", {}), "graph")
+        self.claims = [known(claim, "claim") for claim in data.get("claim", [])]
+        self.tables = [known(table, "table") for table in data.get("table", [])]
         self.definitions: dict[str, ast.expr] = {}
         raw = {name: parse(text, {}) for name, text in data.get("define", {}).items()}
         for name, text in data.get("define", {}).items():
             self.definitions[name] = self.read(text)
-        self.where = [self.read(text) for text in where]
-        self.claims = [known(claim, "claim") for claim in data.get("claim", [])]
-        self.tables = [known(table, "table") for table in data.get("table", [])]
+        self.where = [self.read(text) for text in self.parameters.pop("where", [])]
         texts = [*known(data.get("measure", {}), "measure").get("quantities", [])]
         for part in (*self.claims, *self.tables):
-            texts += [*part.get("columns", []), *part.get("given", [])]
-            texts += [part["says"]] if "says" in part else []
-        self.trees = [self.read(text) for text in texts]
+            texts += [*part.get("columns", [part.get("says")]), *part.get("given", [])]
+        texts += STRUCTURE if self.graph else ()
+        self.trees = [self.read(text) for text in texts]  # all of which the quantities are measured
         used = {named(node)[0] for text in texts for node in subtrees(parse(text, {}))}
         for name in reversed(raw):
             used |= {named(node)[0] for node in subtrees(raw[name])} if name in used else set()
         self.used = [name for name in raw if name in used]
+
+    def belonging(self) -> set[str]:
+        """Return the paths of the tables and of the files that the case names."""
+        named_files = [
+            part[key]
+            for part in (self.sequence, self.graph, *self.tables)
+            for key in ("file", "expect")
+            if key in part
+        ]
+        return {f"inputs/{name}" for name in named_files} | {
+            f"tables/{t['name']}.csv" for t in self.tables
+        }
 
     def read(self, text: str) -> ast.expr:
         """Parse a text of the case, definitions replaced."""
@@ -68,12 +80,12 @@ class Case:
         return not {"polynomials", "degree"}.isdisjoint(self.parameters.get(name, ()))
 
     def instances(self, chosen: dict[str, str]) -> Iterator[dict[str, str]]:
-        """Yield the parameters of all instances in order, the last parameter varying fastest."""
+        """Yield the parameters of all instances, the last parameter varying fastest."""
         if len(chosen) < len(self.parameters):
             name = list(self.parameters)[len(chosen)]
             for text in self._choices(known(self.parameters[name], "sweep"), chosen):
                 yield from self.instances(chosen | {name: text})
-        elif all(judge(tree, Instance(self, chosen), []) != "fails" for tree in self.where):
+        elif all(judge(tree, Instance(self, chosen))[0] != "fails" for tree in self.where):
             yield chosen
 
     def _choices(self, sweep: dict[str, Any], chosen: dict[str, str]) -> Iterator[str]:
@@ -85,24 +97,21 @@ class Case:
                     yield str(n)
         for item in sweep.get("values", ()):
             yield str(canonical(value(parse(str(item), {}), None)))
-        for item in sweep.get("polynomials", ()):
-            yield item.strip()
+        yield from (item.strip() for item in sweep.get("polynomials", ()))
         if "degree" in sweep:
             yield from self._generated(sweep, Instance(self, chosen))
 
     def _generated(self, sweep: dict[str, Any], instance: Instance) -> Iterator[str]:
-        p, degree = instance.integer("p"), instance.integer(sweep["degree"])
+        p, degree = instance.p, instance.integer(sweep["degree"])
         monic, step = bool(sweep.get("monic")), 2 if sweep.get("even") else 1
         free = degree // step + 1 - monic
-        if degree % step:
-            raise RecheckError("case.toml: an even polynomial of odd degree")
 
         def accepted(drawn: tuple[int, ...]) -> str:
             self.spend(20 * (degree + 1) ** 2)
             f = [0] * (degree + 1)
             f[::step] = reversed((1,) * monic + drawn)
             fit = f[-1] and (not sweep.get("squarefree") or arithmetic.squarefree(f, p))
-            return polynomial_text(f) if fit else ""
+            return arithmetic.polynomial_text(f) if fit else ""
 
         everything = filter(None, map(accepted, product(range(p), repeat=free)))
         if sweep.get("every"):
@@ -118,16 +127,12 @@ class Case:
 
         few = p**free <= 10**5
         most = min(sample, sum(1 for _ in everything)) if few else sample
-        found, draws = [""], 0
+        found, draws = {""}, 0  # "" stands for what is not accepted
         while len(found) <= most and (few or draws < 64 * sample + 4096):
             text, draws = accepted(tuple(coefficient() for _ in range(free))), draws + 1
             if text not in found:
-                found.append(text)
+                found.add(text)
                 yield text
-
-
-def _refuse(text: str) -> None:
-    raise RecheckError(f"case.toml: this re-checker does not know the float {text}")
 
 
 def _is_prime_power(q: int) -> bool:

@@ -1,25 +1,30 @@
-"""Re-check a results folder: digests, every certificate line, tables and summary.
+"""Re-check a results folder: digests, every certificate line, the summary and the tables.
 
-Trusted: Python and its standard library, SHA-256, the files of this folder `recheck`, and the case file
-case.toml with inputs/. Nothing else is: every line of certificates.jsonl, summary.json and tables/ is
-rebuilt from the case by the definitions and must be the same text; factorisations in proofs of primality
-are the only thing taken from a certificate, and they are verified. Of appendix.tex and references.bib,
-which are prose, only the digests are checked. The name of the case is taken from summary.json.
+Trusted: Python with its standard library, SHA-256, the files of this folder `recheck`, and the case
+file case.toml with inputs/. Nothing else is: every line of certificates.jsonl, summary.json and
+tables/ is rebuilt from the case by the definitions and must be the same text. From a certificate
+only the factorisations in proofs of primality are taken, and verified. Of appendix.tex and
+references.bib, which are prose, the digests alone are checked; the case's name is summary.json's.
 """
 
 import argparse
 import json
 import sys
+from collections.abc import Iterator
+from contextlib import contextmanager
 from hashlib import sha256
+from itertools import zip_longest
 from pathlib import Path
 from typing import Any
 
 from .case import Case
 from .instance import OverBudgetError
 from .reals import RecheckError
-from .rebuild import Row, summary, table_text
+from .rebuild import Row
+from .summary import summary, table_text
 
-LATER = ("appendix.pdf", "fragment.tex", "page.html")
+LATER = ("appendix.pdf", "fragment.tex", "page.html")  # made on request, after the digests
+NEEDED = ("case.toml", "summary.json", "certificates.jsonl", "appendix.tex", "references.bib")
 MOST_BYTES, MOST_DIGITS = 256 * 2**20, 400_000
 
 
@@ -28,52 +33,59 @@ def canonical_json(value: Any) -> str:
     return json.dumps(value, sort_keys=True, separators=(",", ":"), ensure_ascii=False)
 
 
-def _pairs(pairs: list[tuple[str, Any]]) -> dict[str, Any]:
-    found = dict(pairs)
-    if len(found) < len(pairs):
+def _object(pairs: list[tuple[str, Any]]) -> dict[str, Any]:
+    if len(dict(pairs)) < len(pairs):
         raise RecheckError("a repeated key")
-    return found
+    return dict(pairs)
 
 
 def _refuse(text: str) -> None:
-    raise RecheckError(f"the number {text}, which is no integer")
+    raise RecheckError(f"{text} is no integer")
 
 
-def read_json(text: str, place: str) -> Any:
-    """Read strict JSON in canonical form."""
+@contextmanager
+def at(place: str) -> Iterator[None]:
+    """Say where it was that something did not check; whatever a hostile folder provokes does not."""
     try:
-        found = json.loads(
-            text, object_pairs_hook=_pairs, parse_float=_refuse, parse_constant=_refuse
-        )
-    except (RecheckError, ValueError) as error:
-        raise RecheckError(f"{place}: not canonical JSON: {error}") from None
-    if canonical_json(found) != text:
-        raise RecheckError(f"{place}: not canonical JSON: other spacing or order than canonical")
+        yield
+    except Exception as error:
+        kind = "" if isinstance(error, RecheckError) else f"{type(error).__name__}: "
+        raise RecheckError(f"{place}: {kind}{error}") from error
+
+
+def read_lines(content: bytes, name: str) -> list[Any]:
+    """Read one JSON object a line, in canonical form and every line ended."""
+    strict: Any = {"parse_float": _refuse, "parse_constant": _refuse, "object_pairs_hook": _object}
+    found = []
+    for i, line in enumerate(
+        content.decode().split("\n")[:-1] if content[-1:] == b"\n" else [""], 1
+    ):
+        with at(f"{name}:{i}: not canonical JSON"):
+            found.append(json.loads(line, **strict))
+            if not isinstance(found[-1], dict) or canonical_json(found[-1]) != line:
+                raise RecheckError("no object, or other spaces or order")
     return found
 
 
-def compare_json(given: Any, right: Any, place: str, path: str = "") -> None:
+def compare_json(given: Any, right: Any, path: str = "") -> None:
     """Refuse the first difference by its path."""
     if isinstance(given, dict) and isinstance(right, dict):
         for key in sorted(given.keys() | right.keys()):
-            compare_json(given.get(key, ...), right.get(key, ...), place, f"{path}.{key}")
+            compare_json(given.get(key, ...), right.get(key, ...), f"{path}.{key}".lstrip("."))
     elif isinstance(given, list) and isinstance(right, list) and len(given) == len(right):
         for i, (a, b) in enumerate(zip(given, right, strict=True)):
-            compare_json(a, b, place, f"{path}[{i}]")
+            compare_json(a, b, f"{path}[{i}]")
     elif type(given) is not type(right) or given != right:
-        said, wanted = (
-            "nothing" if part is ... else canonical_json(part)[:200] for part in (given, right)
-        )
-        raise RecheckError(f"{place}: {path.lstrip('.')} says {said} where {wanted} is right")
+        a, b = ("nothing" if x is ... else canonical_json(x)[:200] for x in (given, right))
+        raise RecheckError(f"{path or 'the line'} says {a} where {b} is right")
 
 
-def compare_text(given: str, right: str, name: str) -> None:
+def compare_text(content: bytes, right: str, name: str) -> None:
     """Refuse the first line that differs."""
-    said, wanted = given.split("\n"), right.split("\n")
-    for i in range(max(len(said), len(wanted)) if given != right else 0):
-        a, b = ((repr(lines[i][:200]) if i < len(lines) else "nothing") for lines in (said, wanted))
+    said, wanted = (text.split("\n") for text in (content.decode(), right))
+    for i, (a, b) in enumerate(zip_longest(said, wanted), 1):
         if a != b:
-            raise RecheckError(f"{name} line {i + 1}: says {a} where {b} is right")
+            raise RecheckError(f"{name}:{i}: says {a!r} where {b!r} is right"[:600])
 
 
 def read_folder(folder: Path) -> dict[str, bytes]:
@@ -83,76 +95,69 @@ def read_folder(folder: Path) -> dict[str, bytes]:
         name = path.relative_to(folder).as_posix()
         if path.is_symlink() or not (path.is_file() or path.is_dir()):
             raise RecheckError(f"{name}: neither a file nor a folder")
-        if path.is_dir() or name in LATER or name.startswith(("formal/", "recheck/__pycache__/")):
-            continue
-        if path.stat().st_size > MOST_BYTES:
+        if path.is_file() and path.stat().st_size > MOST_BYTES:
             raise RecheckError(f"{name}: larger than 256 MB")
-        files[name] = path.read_bytes()
-    for name in ("digests.txt", "case.toml", "summary.json", "certificates.jsonl"):
-        if name not in files:
-            raise RecheckError(f"{name}: missing")
-    listed = files.pop("digests.txt").decode()
-    names = {line[66:] for line in listed.splitlines()}
+        later = name in LATER or name.startswith(("formal/", "recheck/__pycache__/"))
+        if path.is_file() and not later:
+            files[name] = path.read_bytes()
+    listed = files.pop("digests.txt", b"")
+    for name in sorted(set(NEEDED) - files.keys()):
+        raise RecheckError(f"{name}: missing")
     for name in files:
-        if name not in names:
+        if f"  {name}\n".encode() not in listed:
             raise RecheckError(f"{name}: a stranger, not listed in digests.txt")
     lines = (f"{sha256(files[name]).hexdigest()}  {name}\n" for name in sorted(files))
     compare_text(listed, "".join(lines), "digests.txt")
     return files
 
 
+class Budget:
+    """The steps that remain: about one operation on one term or machine word each."""
+
+    def __init__(self, steps: int) -> None:
+        self.steps = steps
+
+    def spend(self, steps: int) -> None:
+        """Take so many steps, or refuse."""
+        if steps > self.steps:
+            raise OverBudgetError
+        self.steps -= steps
+
+
 def check(folder: Path, steps: int) -> int:
     """Check a folder, print the outcome and return the exit status."""
     files = read_folder(folder)
-    left = [steps]
-
-    def spend(cost: int) -> None:
-        if cost > left[0]:
-            raise OverBudgetError
-        left[0] -= cost
-
-    case = Case(files, spend)
-    given = read_json(files["summary.json"].decode().removesuffix("\n"), "summary.json")
-    if files["summary.json"][-1:] != b"\n":
-        raise RecheckError("summary.json: no newline at the end")
-    name = given.get("case")
-    text = files["certificates.jsonl"].decode()
-    lines = text.split("\n")
-    if lines.pop():
-        raise RecheckError("certificates.jsonl: no newline at the end")
+    [said] = read_lines(files["summary.json"], "summary.json")
+    lines = read_lines(files["certificates.jsonl"], "certificates.jsonl")
+    case = Case(files, Budget(steps).spend)
+    for name in files.keys() - set(NEEDED) - case.belonging():
+        if not name.startswith("recheck/"):
+            raise RecheckError(f"{name}: a stranger, which the case does not name")
     skipped: list[str] = []
-    documents, ratios = [], []
-    said = [read_json(line, f"certificates.jsonl line {i}") for i, line in enumerate(lines, 1)]
     try:
         instances = list(case.instances({}))
     except OverBudgetError:
-        skipped.append("the list of instances")
-        instances = [line["parameters"] for line in said]
-    for i, parameters in enumerate(instances):
-        place = f"certificates.jsonl line {i + 1}"
-        if i >= len(said):
-            raise RecheckError(f"{place}: missing; the case has {len(instances)} instances")
-        line = said[i]
-        row = Row(case, parameters, line)
-        document, ratio = row.document(i, name)
-        compare_json(line, document, place)
-        skipped += [f"instance {i}: {quantity}" for quantity in row.skipped]
-        documents.append(document)
-        ratios.append(ratio)
-    if len(said) > len(instances):
-        raise RecheckError(
-            f"certificates.jsonl line {len(instances) + 1}: more than the instances of the case"
-        )
+        skipped, instances = ["the list of instances"], [line["parameters"] for line in lines]
+    documents, ratios, name = [], [], lines[-1]["case"] if lines else ""
+    for i in range(max(len(instances), len(lines))):
+        with at(f"certificates.jsonl:{i + 1}"):
+            if i >= len(instances):
+                raise RecheckError("no such instance")
+            row = Row(case, instances[i], lines[i] if i < len(lines) else {})
+            document, ratio = row.document(i, name)
+            compare_json(lines[i] if i < len(lines) else ..., document)
+            skipped += [f"{what} at instance {i}" for what in row.skipped]
+            documents.append(document)
+            ratios.append(ratio)
     for table in case.tables:
         path = f"tables/{table['name']}.csv"
-        compare_text(files[path].decode(), table_text(case, table, documents), path)
+        compare_text(files[path], table_text(table, documents), path)
     right = summary(case, name, documents, ratios)
-    compare_json(given, right, "summary.json")
-    for item in skipped:
-        print(f"not re-checked: {item}")
-    print(
-        f"re-checked: {len(documents)} instances, {len(case.claims)} claims, verdict {right['verdict']}"
-    )
+    with at("summary.json:1"):
+        compare_json(said, right)
+    print("".join(f"not re-checked: {what}\n" for what in skipped), end="")
+    counts = f"{len(documents)} instances, {len(case.claims)} claims"
+    print(f"re-checked: {counts}, verdict {right['verdict']}")
     return 3 if skipped else 0
 
 
@@ -161,20 +166,16 @@ def main(arguments: list[str]) -> int:
     parser = argparse.ArgumentParser(prog="recheck", description="Check a results folder again.")
     parser.add_argument("folder", type=Path)
     parser.add_argument("--budget", type=int, default=10**10, metavar="STEPS")
+    digits = sys.get_int_max_str_digits()
     try:
         options = parser.parse_args(arguments)
+        sys.set_int_max_str_digits(MOST_DIGITS)
+        with at("recheck"):
+            return check(options.folder, options.budget)
     except SystemExit as stop:
         return int(stop.code or 0)
-    digits = sys.get_int_max_str_digits()
-    sys.set_int_max_str_digits(MOST_DIGITS)
-    try:
-        return check(options.folder, options.budget)
-    except Exception as error:
-        words = " ".join(str(error).split()) or type(error).__name__
-        kind = (
-            "" if isinstance(error, RecheckError) else f"cannot be read: {type(error).__name__}: "
-        )
-        print(f"recheck: {kind}{words[:600]}", file=sys.stderr)
+    except RecheckError as error:
+        print(" ".join(str(error).split())[:600], file=sys.stderr)
         return 5
     finally:
         sys.set_int_max_str_digits(digits)

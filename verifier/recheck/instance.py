@@ -11,7 +11,7 @@ from typing import Any
 from . import arithmetic
 from .expression import integer, named, parse, value
 from .graphs import Graph, make_graph, read_graph
-from .reals import OutsideError, Real, RecheckError, rational
+from .reals import ONE, ZERO, OutsideError, Real, RecheckError, rational
 
 ENDINGS = {"g6": "graph6", "s6": "sparse6", "edges": "edge-list", "matrix": "matrix"}
 STREAM = "SHA-256 of primewise:SEED:BLOCK, least significant bit first"
@@ -21,8 +21,20 @@ class OverBudgetError(Exception):
     """The step asked for would exceed what remains of the budget."""
 
 
+def read_signs(source: Any) -> list[int]:
+    """Read the signs of an explicit sequence: 1 and -1, + and -, or bits b for (-1)^b."""
+    text = source if isinstance(source, str) else " ".join(map(str, source))
+    tokens = re.findall(r"[^\s,]+", text)
+    joined = "".join(tokens)
+    if set(tokens) <= {"1", "+1", "-1"}:
+        return [int(token) for token in tokens]
+    if not set(joined) <= set("+-") and not set(joined) <= set("01"):
+        raise RecheckError("the explicit sequence cannot be read")
+    return [1 if sign in "+0" else -1 for sign in joined]
+
+
 class Instance:
-    """What the definitions give for one choice of the parameters; sequence and graph made late."""
+    """What the definitions give for one choice of parameters; what is large is made when used."""
 
     def __init__(self, case: Any, parameters: dict[str, str]) -> None:
         self.case, self.parameters, self.spend = case, parameters, case.spend
@@ -35,14 +47,42 @@ class Instance:
             self.names.setdefault("q", self.names["p"])
             if not arithmetic.is_prime(self.p):
                 raise RecheckError(f"p = {self.p} is not prime")
-        if "polynomial" in self.rule and len(parameters) == len(case.parameters):
-            f = self._coefficients(case.read(self.rule["polynomial"]))
-            if any(c.denominator % self.p == 0 for c in f):
-                self.reason = f"{self.p} divides a denominator of f"
-                return
-            residues = [c.numerator * pow(c.denominator, -1, self.p) for c in f]
-            self.f = arithmetic.reduced(residues, self.p)
-            self.reason = "" if self.f else f"f vanishes identically modulo {self.p}"
+        if self.rule and len(parameters) == len(case.parameters):
+            self._begin(self.rule)
+
+    def _begin(self, rule: dict[str, Any]) -> None:
+        if rule["rule"] not in ("legendre", "inverse", "random", "explicit"):
+            raise RecheckError(
+                f"case.toml: this re-checker does not know the rule {rule['rule']!r}"
+            )
+        if "polynomial" in rule:
+            f, p = self._coefficients(self.case.read(rule["polynomial"])), self.p
+            divided = any(c.denominator % p == 0 for c in f)
+            self.f = (
+                []
+                if divided
+                else arithmetic.reduced([c.numerator * pow(c.denominator, -1, p) for c in f], p)
+            )
+            if not self.f:
+                self.reason = (
+                    f"{p} divides a denominator of f"
+                    if divided
+                    else f"f vanishes identically modulo {p}"
+                )
+        self.zero = rule.get("at-zero", -1 if rule["rule"] == "inverse" else 1)
+        self.seed = self.integer(rule.get("seed", 0))
+        self.given = read_signs(
+            self.case.files["inputs/" + rule["file"]].decode()
+            if "file" in rule
+            else rule.get("values", "")
+        )
+        self.full = {
+            "explicit": len(self.given),
+            "random": self.integer(rule.get("length", 0)),
+        }.get(rule["rule"], self.p)
+        first, last = rule.get("indices", f"0..{self.full - 1}").split("..")
+        self.first, self.last = self.integer(first), self.integer(last)
+        self.length = self.last - self.first + 1
 
     def integer(self, number: int | str) -> int:
         """Return an integer of the case, given as such or as an expression."""
@@ -50,10 +90,10 @@ class Instance:
 
     def _coefficients(self, tree: ast.expr) -> list[Fraction]:  # over the rationals, constant first
         name, _ = named(tree)
-        if name == "x":
-            return [Fraction(0), Fraction(1)]
-        if self.case.is_polynomial(name):
-            return self._coefficients(parse(self.parameters[name], {}))
+        if name == "x" or self.case.is_polynomial(name):
+            return (
+                [ZERO, ONE] if name == "x" else self._coefficients(parse(self.parameters[name], {}))
+            )
         if isinstance(tree, ast.UnaryOp):
             return [-c for c in self._coefficients(tree.operand)]
         if not isinstance(tree, ast.BinOp):
@@ -61,15 +101,14 @@ class Instance:
         f, g = self._coefficients(tree.left), self._coefficients(tree.right)
         if isinstance(tree.op, ast.Add | ast.Sub):
             side = 1 if isinstance(tree.op, ast.Add) else -1
-            f, g = (h + [Fraction(0)] * (len(f) + len(g) - len(h)) for h in (f, g))
+            f, g = (h + [ZERO] * (max(len(f), len(g)) - len(h)) for h in (f, g))
             return [a + side * b for a, b in zip(f, g, strict=True)]
-        if isinstance(tree.op, ast.Div):
-            return [a / g[0] for a in f]
-        factors = [f, g] if isinstance(tree.op, ast.Mult) else [f] * int(g[0])
-        result = [Fraction(1)]
-        for factor in factors:
-            result = [Fraction(c) for c in arithmetic.times(result, factor)]
-            if len(result) > 4096:
+        if isinstance(tree.op, ast.Mult | ast.Div):
+            return arithmetic.times(f, g if isinstance(tree.op, ast.Mult) else [1 / g[0]])
+        result = [ONE]
+        for _ in range(int(g[0])):
+            result = arithmetic.times(result, f)
+            if len(result) > 1001:
                 raise RecheckError("a polynomial of degree above 1000")
         return result
 
@@ -79,23 +118,19 @@ class Instance:
             return self.names[name]
         if name in ("N", "n"):
             return Fraction(self.order if name == "n" else self.length)
-        if name == "chi":
-            residue = integer(value(arguments[0], self), "chi") % self.p
-            return Fraction((pow(residue, (self.p - 1) // 2, self.p) + 1) % self.p - 1)  # Euler
-        if name not in ("value", "leading", "disc", "k", "r") or "polynomial" not in self.rule:
+        if name not in ("chi", "value", "leading", "disc", "k", "r"):
             raise RecheckError(f"this re-checker does not know {name!r}")
+        a = integer(value(arguments[-1], self), name) % self.p if name in ("chi", "value") else 0
+        if name == "chi":  # by Euler's criterion
+            return Fraction((pow(a, (self.p - 1) // 2, self.p) + 1) % self.p - 1)
         if self.reason:
             raise OutsideError(self.reason)
-        if name == "value":
-            a = integer(value(arguments[1], self), "value")
-            return Fraction(self._at(a))
         if name == "r":
-            self.spend(20 * len(self.f) ** 2 * self.p.bit_length())
-            common = next(arithmetic.common_with_frobenius(self.f, self.p)) if self.f[1:] else [1]
-            return Fraction(len(common) - 1)
+            return Fraction(self.values.count(0))
         if name == "disc":
             return Fraction(arithmetic.discriminant(self.f, self.p))
-        return Fraction(self.f[-1] if name == "leading" else len(self.f) - 1)
+        last = self.f[-1] if name == "leading" else len(self.f) - 1
+        return Fraction(self._at(a) if name == "value" else last)
 
     def _at(self, x: int) -> int:
         result = 0
@@ -111,76 +146,30 @@ class Instance:
 
     @cached_property
     def characters(self) -> list[int]:
-        """Return chi(f(0)), ..., chi(f(p-1)); the squares are listed."""
-        table = [-1] * self.p
-        for x in range(self.p):
-            table[x * x % self.p] = 1
-        table[0] = 0
-        return [table[v] for v in self.values]
-
-    @cached_property
-    def given(self) -> list[int]:
-        """Return the period of an explicit sequence."""
-        source = self.rule.get("values", "")
-        if "file" in self.rule:
-            source = self.case.files["inputs/" + self.rule["file"]].decode()
-        text = source if isinstance(source, str) else " ".join(map(str, source))
-        tokens = re.findall(r"[^\s,]+", text)
-        joined = "".join(tokens)
-        if set(tokens) <= {"1", "+1", "-1"}:
-            return [int(token) for token in tokens]
-        if not set(joined) <= set("+-") and not set(joined) <= set("01"):
-            raise RecheckError("the explicit sequence cannot be read")
-        return [1 if sign in "+0" else -1 for sign in joined]
-
-    @cached_property
-    def full(self) -> int:
-        """Return the length of one full period."""
-        kind = self.rule["rule"]
-        if kind in ("legendre", "inverse"):
-            if self.p < 3:
-                raise RecheckError(f"the rule {kind} wants an odd prime p")
-            return self.p
-        if kind not in ("random", "explicit"):
-            raise RecheckError(f"case.toml: this re-checker does not know the rule {kind!r}")
-        return self.integer(self.rule["length"]) if kind == "random" else len(self.given)
-
-    @cached_property
-    def ends(self) -> tuple[int, int]:
-        """Return the first and the last index."""
-        first, last = self.rule.get("indices", f"0..{self.full - 1}").split("..")
-        return self.integer(first), self.integer(last)
-
-    @property
-    def order(self) -> int:
-        """Return n."""
-        return self.graph.n if self.case.graph.get("kind") == "file" else self.length
-
-    @property
-    def length(self) -> int:
-        """Return N."""
-        return self.ends[1] - self.ends[0] + 1
+        """Return chi(f(0)), ..., chi(f(p-1)), from the list of all squares."""
+        squares = {x * x % self.p for x in range(self.p)}
+        return [(1 if v in squares else -1) if v else 0 for v in self.values]
 
     @cached_property
     def signs(self) -> list[int]:
         """Return e, after `indices` and `symmetrise`."""
-        kind, n = self.rule["rule"], self.length
-        self.spend(10 * n)
-        zero = self.rule.get("at-zero", -1 if kind == "inverse" else 1)
+        self.spend(10 * self.length)
+        kind, p, n, period = self.rule["rule"], self.p, self.length, self.given
         if kind == "legendre":
-            period = [c or zero for c in self.characters]
+            period = [c or self.zero for c in self.characters]
         elif kind == "inverse":
-            p = self.p
-            period = [(1 if 2 * pow(v, -1, p) < p else -1) if v else zero for v in self.values]
+            period = [(1 if 2 * pow(v, -1, p) < p else -1) if v else self.zero for v in self.values]
         elif kind == "random":
-            stream = arithmetic.bits(self.integer(self.rule["seed"]))
-            period = [1 - 2 * bit for bit in islice(stream, self.full)]
-        else:
-            period = self.given
-        e = [period[j % self.full] for j in range(self.ends[0], self.ends[1] + 1)]
-        mirrored = (n + 1) // 2 if self.rule.get("symmetrise") == "mirror" else 1
-        e[n - mirrored + 1 :] = reversed(e[1:mirrored])
+            period = [1 - 2 * bit for bit in islice(arithmetic.bits(self.seed), self.full)]
+        e = [period[j % self.full] for j in range(self.first, self.last + 1)]
+        half = (n + 1) // 2 if self.rule.get("symmetrise") == "mirror" else 1
+        e[n - half + 1 :] = reversed(e[1:half])
         return e
+
+    @property
+    def order(self) -> int:
+        """Return n."""
+        return self.graph.n if self.case.graph["kind"] == "file" else self.length
 
     @cached_property
     def graph(self) -> Graph:
@@ -202,16 +191,15 @@ class Instance:
         rule, graph, texts = self.rule, self.case.graph, {}
         if rule:
             texts = {"rule": rule["rule"], "symmetrise": rule.get("symmetrise", "none")}
-            texts["indices"] = "{}..{}".format(*self.ends)
+            texts["indices"] = f"{self.first}..{self.last}"
         if self.f:
             text = arithmetic.polynomial_text(self.f)
-            long = "sha256:" + sha256(text.encode()).hexdigest()
-            texts["polynomial"] = text if len(text) <= 1000 else long
+            digest = sha256(text.encode()).hexdigest()
+            texts["polynomial"] = text if len(text) <= 1000 else f"sha256:{digest}"
         if "polynomial" in rule:
-            texts["at-zero"] = str(rule.get("at-zero", -1 if rule["rule"] == "inverse" else 1))
+            texts["at-zero"] = str(self.zero)
         if rule.get("rule") == "random":
-            seed = str(self.integer(rule["seed"]))
-            texts |= {"length": str(self.full), "seed": seed, "stream": STREAM}
+            texts |= {"length": str(self.full), "seed": str(self.seed), "stream": STREAM}
         if rule.get("rule") == "explicit":
             signs = "".join("+" if e == 1 else "-" for e in self.given)
             texts["signs"] = sha256(signs.encode()).hexdigest()

@@ -1,8 +1,9 @@
 """Exact reals: rationals, and nodes of + - * / root log exp pi, enclosed as narrowly as needed.
 
-Enclosures are made by Python's decimal module, rounded outwards; no float occurs. Whether an algebraic
-value is zero or rational is decided by the separation bound of C. Burnikel, S. Funke, K. Mehlhorn,
-S. Schirra, S. Schmitt, A separation bound for real algebraic expressions, ESA 2001, LNCS 2161, 254-265.
+Enclosures are made by Python's decimal module, rounded outwards; no float occurs. Whether an
+algebraic value is zero or rational is decided by the separation bound of C. Burnikel, S. Funke,
+K. Mehlhorn, S. Schirra, S. Schmitt, A separation bound for real algebraic expressions, ESA 2001,
+LNCS 2161, 254-265.
 """
 
 import operator

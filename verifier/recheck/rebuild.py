@@ -1,39 +1,44 @@
-"""Certificate lines, tables and summary, rebuilt; of a given line only hints are read.
+"""Certificate lines, rebuilt; of a given line only hints are read.
 
-Hints are the factorisations of Pratt's proofs and, where the budget or a limit of the maker forbids a
-value, that value with its witness: such names are listed in `skipped`.
+Hints are the factorisations in proofs of primality and, where the budget or a limit of the maker
+forbids a value, this value with its witness; such names are collected in `skipped`.
 """
 
 import ast
-import csv
-import io
 import re
 from contextlib import suppress
+from decimal import Decimal
 from fractions import Fraction
 from functools import cached_property
 from typing import Any
 
-from . import arithmetic, quantities
-from .case import Case
+from . import arithmetic
+from .case import STRUCTURE, Case
 from .expression import Leaf, integer, judge, named, subtrees, value
 from .instance import Instance, OverBudgetError
-from .reals import OpenError, OutsideError, Real, RecheckError, canonical, compare, decimals, floor
+from .quantities import GRAPH, ORDERS, QUANTITIES, Measured, maximum, pair_statistics
+from .reals import OpenError, OutsideError, Real, RecheckError, canonical, compare, floor
 
-STRUCTURE = ("zero_one", "zero_diagonal", "symmetric")
-PREDICATES = ("squarefree", "even", "odd", "irreducible", "prime", "regular", *STRUCTURE)
-ORDER = ("fails", "open", "holds", "outside")
+OF_F = ("squarefree", "even", "odd", "irreducible")
+PREDICATES = (*OF_F, "prime", "regular", *STRUCTURE)
+LIMIT = "limit: "
+Json = dict[str, Any]
 
 
 class Row(Instance):
     """One instance with what is measured and judged there; `line` gives hints alone."""
 
-    def __init__(self, case: Case, parameters: dict[str, str], line: dict[str, Any]) -> None:
+    def __init__(self, case: Case, parameters: dict[str, str], line: Json) -> None:
         super().__init__(case, parameters)
         self.line = line
         self.skipped: list[str] = []
         self.measured: dict[str, Any] = {}  # name -> value, or the error that stands for it
         self.witnesses: dict[str, list[str]] = {}
-        self.primality: dict[str, Any] = {}
+        self.primality: Json = {}
+        if self.p:
+            self.primality[str(self.p)] = arithmetic.pratt(
+                self.p, self.hint("primality", str(self.p))
+            )
 
     def hint(self, *keys: str) -> Any:
         """Return what the given line says somewhere, None where it does not."""
@@ -43,353 +48,195 @@ class Row(Instance):
         return found
 
     def look_up(self, name: str, arguments: list[ast.expr]) -> Real:
-        """Return the value of a name, function of f, or quantity."""
-        if name not in quantities.GRAPH and name not in quantities.OTHERS:
-            return super().look_up(name, arguments)
-        return Fraction(self.measure(name, arguments))
+        """Return the value of a name, of a function of f, or of a quantity."""
+        known = name in QUANTITIES
+        return (
+            Fraction(self.measure(name, arguments)) if known else super().look_up(name, arguments)
+        )
 
-    def predicate(self, name: str, arguments: list[ast.expr]) -> bool:
-        """Return the truth of a predicate."""
-        return bool(self.measure(name, arguments))
-
-    def called(self, name: str, arguments: list[ast.expr]) -> tuple[int, ...]:
-        """Return the integer arguments of a quantity or predicate."""
-        read = (lambda x, _: floor(x)) if name == "window_sum" else integer
-        if name in PREDICATES and [named(a)[0] for a in arguments] == ["f"]:
-            return ()
-        found = tuple(read(value(argument, self), name) for argument in arguments)
-        if name in quantities.ORDERS and found[0] not in quantities.ORDERS[name]:
-            raise RecheckError(f"this re-checker does not know {name}({found[0]})")
-        return found
+    def called(self, name: str, arguments: list[ast.expr]) -> list[int]:
+        """Return the integer arguments of a quantity or predicate; none for f itself."""
+        if name not in (*QUANTITIES, *PREDICATES):
+            raise RecheckError(f"this re-checker does not know {name!r}")
+        if name in OF_F and named(arguments[0]) == ("f", []):
+            return []
+        read: Any = (lambda x, _: floor(x)) if name == "window_sum" else integer
+        numbers = [read(value(argument, self), name) for argument in arguments]
+        if name in ORDERS and numbers[0] not in ORDERS[name]:
+            raise RecheckError(f"this re-checker does not know {name}({numbers[0]})")
+        return numbers
 
     def measure(self, name: str, arguments: list[ast.expr]) -> Any:
         """Measure once, or take the value from the line and list it."""
         numbers = self.called(name, arguments)
-        inside = ",".join(map(str, numbers)) or "f" * len(arguments)
+        inside = "f" if name in OF_F else ",".join(map(str, numbers))
         full = f"{name}({inside})" if inside else name
         if full not in self.measured:
-            witness = None
-            try:
-                self.measured[full], witness = self._measured(name, numbers)
-                if self.line.get("quantities", {}).get(full, "") is None:
-                    raise OverBudgetError
-            except (OpenError, OutsideError) as error:
-                self.measured[full] = error
-            except OverBudgetError:
-                self.skipped.append(full)
-                text, witness = self.hint("quantities", full), self.hint("witnesses", full)
-                number = isinstance(text, str) and re.fullmatch(r"-?\d+(/\d+)?", text)
-                self.measured[full] = Fraction(text) if number else text
-                if not number and not isinstance(text, bool):
-                    self.measured[full] = OpenError("limit: ")
+            self.measured[full], witness = self._measured(name, full, numbers)
             if witness is not None:
                 self.witnesses[full] = list(map(str, witness))
         if isinstance(self.measured[full], Exception):
             raise self.measured[full]
         return self.measured[full]
 
-    def _measured(self, name: str, numbers: tuple[int, ...]) -> tuple[Any, Any]:
+    def _measured(self, name: str, full: str, numbers: list[int]) -> tuple[Any, Any]:
+        said = self.hint("quantities", full)
+        with suppress(OverBudgetError):
+            try:
+                found = self._by_definition(name, numbers)
+            except (OpenError, OutsideError) as error:
+                return error, None
+            if said is not None or full not in (self.hint("quantities") or ()):
+                return found
+        self.skipped.append(full)
+        taken = said if isinstance(said, bool) else self.taken(said)
+        return taken, self.hint("witnesses", full)
+
+    def taken(self, said: Any) -> Any:
+        """Return the rational that the line says, without a check."""
+        exact = isinstance(said, str) and re.fullmatch(r"-?\d+(/\d+)?", said)
+        return Fraction(said) if exact else OpenError(LIMIT)
+
+    def _by_definition(self, name: str, numbers: list[int]) -> tuple[Any, Any]:
         if self.reason:
             raise OutsideError(self.reason)
         if name == "prime":
-            a = str(numbers[0])
-            prime = arithmetic.is_prime(numbers[0])
-            if prime and numbers[0] > 2:
+            prime, a = arithmetic.is_prime(numbers[0]), str(numbers[0])
+            if prime and a != "2":
                 self.primality[a] = arithmetic.pratt(numbers[0], self.hint("primality", a))
             return prime, None
+        if name in OF_F:
+            self.spend(20 * len(self.f) ** 3 * self.p.bit_length())
+            if name in ("even", "odd"):
+                return not any(self.f[name == "even" :: 2]), None
+            return getattr(arithmetic, name)(self.f, self.p), None
+        defects = self.graph.defects if name in (*GRAPH, *STRUCTURE, "regular") else {}
         if name in STRUCTURE:
-            defect = self.graph.defects.get(name)
-            return defect is None, defect and defect[0]
-        if name in quantities.OTHERS:
-            return quantities.OTHERS[name](self, *numbers)
-        if name in quantities.GRAPH or name == "regular":
-            for predicate in STRUCTURE:
-                if predicate in self.graph.defects:
-                    raise OutsideError(self.graph.defects[predicate][1])
-            if name in quantities.GRAPH:
-                return quantities.GRAPH[name](self, *numbers)
-            other = [j for j, d in enumerate(self.graph.degrees) if d != self.graph.degrees[0]]
-            return not other, (0, other[0]) if other else None
-        if name in ("even", "odd"):
-            return not any(self.f[name == "even" :: 2]), None
-        test = {"squarefree": arithmetic.squarefree, "irreducible": arithmetic.irreducible}.get(
-            name
-        )
-        if test is None:
-            raise RecheckError(f"this re-checker does not know {name!r}")
-        self.spend(20 * len(self.f) ** 3 * self.p.bit_length())
-        return test(self.f, self.p), None
+            return name not in defects, defects.get(name, [None])[0]
+        for predicate in STRUCTURE:
+            if predicate in defects:
+                raise OutsideError(defects[predicate][1])
+        if name == "regular":
+            degrees = self.graph.degrees
+            other = next((j for j, d in enumerate(degrees) if d != degrees[0]), None)
+            return other is None, other and (0, other)
+        return QUANTITIES[name](self, *numbers)
 
     @cached_property
-    def statistics(self) -> dict[str, quantities.Measured]:
+    def pairs(self) -> dict[str, Measured]:
         """Return the quantities of pairs of vertices, computed together."""
-        return quantities.pair_statistics(self)
+        return pair_statistics(self)
 
-    def known(self) -> dict[str, Any]:
+    def known(self) -> Json:
         """Return what a certificate says is known."""
-        names = ["p"] if self.p else []
-        names += ["q"] if "q" in self.case.parameters else []
-        if not self.reason:
-            names += ["n"] if self.case.graph else []
-            names += ["N"] if self.case.sequence else []
-            names += ["k", "r"] if "polynomial" in self.case.sequence else []
-        found: dict[str, Any] = {}
-        for name in names + ([] if self.reason else self.case.used):
+        swept = [name for name in ("p", "q") if name in self.case.parameters]
+        names = ["n"] * bool(self.case.graph) + ["N"] * bool(self.rule)
+        names += ["k", "r"] * ("polynomial" in self.rule) + self.case.used
+        found: Json = {}
+        for name in swept + ([] if self.reason else names):
             try:
-                tree = self.case.definitions.get(name) or self.case.read(name)
-                found[name] = canonical(value(tree, self))
+                found[name] = canonical(value(self.case.read(name), self))
             except (OpenError, OutsideError):
                 found[name] = None
-            except OverBudgetError:
-                self.skipped.append(name)
-                found[name] = self.hint("known", name)
         return found
+
+    def judged(self, text: str) -> tuple[str, list[Leaf], str]:
+        """Return the verdict of a condition, its leaves and the reason of the verdict."""
+        if self.reason:
+            return "outside", [], self.reason
+        verdict, leaves = judge(self.case.read(text), self)
+        return verdict, leaves, next((x.reason for x in leaves if x.verdict == verdict), "")
 
     def cell(self, text: str) -> str:
         """Return the text of a table cell."""
         tree = self.case.read(text)
         name, arguments = named(tree)
+        name = self.rule["polynomial"].strip() if name == "f" else name
+        negated = isinstance(tree, ast.UnaryOp) and isinstance(tree.op, ast.Not)
+        if (
+            self.reason
+            or negated
+            or isinstance(tree, ast.Compare | ast.BoolOp)
+            or name in PREDICATES
+        ):
+            verdict = self.judged(text)[0]
+            return {"holds": "true", "fails": "false"}.get(verdict, verdict)
+        if text.strip() == "f" or self.case.is_polynomial(name):
+            return self.parameters.get(name, name)
         try:
-            if self.reason:
-                return "outside"
-            if name == "f":
-                name = self.rule["polynomial"].strip()
-                if not self.case.is_polynomial(name):
-                    return name
-            if self.case.is_polynomial(name):
-                return self.parameters[name]
-            if (
-                isinstance(tree, ast.Compare | ast.BoolOp)
-                or name in PREDICATES
-                or (isinstance(tree, ast.UnaryOp) and isinstance(tree.op, ast.Not))
-            ):
-                verdict = judge(tree, self, [])
-                return {"holds": "true", "fails": "false"}.get(verdict, verdict)
-            found = value(tree, self)
-            if name == "round":
-                return decimals(
-                    Fraction(str(canonical(found))), integer(value(arguments[1], self), name)
-                )
-            text = canonical(found)
-            return text if isinstance(text, str) else "open"
-        except OpenError:
-            return "open"
-        except OutsideError:
-            return "outside"
+            found = canonical(value(tree, self))
+            if name == "round" and isinstance(found, str):
+                places = integer(value(arguments[1], self), name)
+                return f"{Decimal(f'{int(Fraction(found) * 10**places)}e-{places}'):f}"
+            return found if isinstance(found, str) else "open"
+        except (OpenError, OutsideError) as error:
+            return "open" if isinstance(error, OpenError) else "outside"
 
-    def claim(self, claim: dict[str, Any]) -> tuple[dict[str, Any], Real | None]:
+    def claim(self, claim: Json) -> tuple[Json, Real | None]:
         """Return the entry of a claim, and its ratio where there is one."""
         tree = self.case.read(claim["says"])
         single = isinstance(tree, ast.Compare)
-        entry: dict[str, Any] = (
-            dict.fromkeys(("left", "right", "ratio", "by")) if single else {"parts": []}
+        given = {text.strip(): self.judged(text) for text in claim.get("given", ())}
+        stops = [("outside", f"given {g} is not met") for g, j in given.items() if j[0] == "fails"]
+        stops += [(j[0], j[2]) for j in given.values() if j[0] == "outside"]
+        stops += [("open", f"given {g} is not decided") for g, j in given.items() if j[0] == "open"]
+        verdict, reason = stops[0] if stops else ("", "")
+        leaves: list[Leaf] = []
+        if not stops:
+            verdict, leaves, reason = self.judged(claim["says"])
+        shown = [leaf.document for leaf in leaves] if verdict != "outside" else []
+        entry: Json = (
+            dict.fromkeys(("left", "right", "ratio", "by")) if single else {"parts": shown}
         )
-        entry["trivial"] = False
-        reasons = {"outside": [self.reason] if self.reason else [], "open": []}
-        unmet = []
-        entry |= {"given": []} if claim.get("given") else {}
-        for text in claim.get("given", ()):
-            leaves: list[Leaf] = []
-            verdict = "outside" if self.reason else judge(self.case.read(text), self, leaves)
-            met = {"holds": True, "fails": False}.get(verdict)
-            entry["given"].append({"says": text.strip(), "met": met})
-            if met is False:
-                unmet.append(f"given {text.strip()} is not met")
-            if verdict == "outside":
-                reasons["outside"] += [
-                    leaf.reason for leaf in leaves if leaf.document["verdict"] == verdict
-                ]
-            if verdict == "open":
-                reasons["open"].append(f"given {text.strip()} is not decided")
-        reasons["outside"] = unmet + reasons["outside"]
-        ratio = None
-        if not reasons["outside"] and not reasons["open"]:
-            leaves = []
-            verdict = judge(tree, self, leaves)
-            if verdict in reasons:
-                reasons[verdict] = [
-                    leaf.reason for leaf in leaves if leaf.document["verdict"] == verdict
-                ]
-            if verdict != "outside" and single:
-                entry |= leaves[0].document
-                ratio = leaves[0].ratio
-                del entry["says"]
-                entry["trivial"] = verdict == "holds" and self._is_trivial(tree)
-            elif verdict != "outside":
-                entry["parts"] = [leaf.document for leaf in leaves]
-        else:
-            verdict = "outside" if reasons["outside"] else "open"
-        entry["verdict"] = verdict
-        if verdict in reasons:
-            entry["reason"] = reasons[verdict][0]
-            if entry["reason"] == "limit: ":
-                said = self.hint("claims", claim["name"], "reason")
-                entry["reason"] = said if str(said).startswith("limit: ") else "limit: "
-        return entry, ratio
+        if single and shown:
+            entry = {key: shown[0][key] for key in entry}
+        if reason == LIMIT and str(self.hint("claims", claim["name"], "reason")).startswith(LIMIT):
+            reason = self.hint("claims", claim["name"], "reason")
+        entry |= {"reason": reason} if verdict in ("open", "outside") else {}
+        met = {"holds": True, "fails": False}
+        says = [{"says": text, "met": met.get(found[0])} for text, found in given.items()]
+        entry |= {"given": says} if given else {}
+        trivial = single and verdict == "holds" and self._is_trivial(tree)
+        return entry | {"verdict": verdict, "trivial": trivial}, leaves[
+            0
+        ].ratio if single and shown else None
 
     def _is_trivial(self, tree: Any) -> bool:
         """Tell whether an upper bound on a single quantity is not below its trivial maximum."""
         sides, relation = [tree.left, tree.comparators[0]], type(tree.ops[0])
         if relation in (ast.Gt, ast.GtE):
             sides.reverse()
-        elif relation not in (ast.Lt, ast.LtE):
-            return False
         name, arguments = named(sides[0])
-        if name == "abs":
-            name, arguments = named(arguments[0])
-        if name not in quantities.GRAPH and name not in quantities.OTHERS:
+        name, arguments = named(arguments[0]) if name == "abs" else (name, arguments)
+        if name not in QUANTITIES or relation in (ast.Eq, ast.NotEq):
             return False
-        n = self.graph.n if self.case.graph else 0
-        most = quantities.maximum(
-            name, self.called(name, arguments), self.length if self.rule else 0, n, self.p
-        )
-        try:
-            side = compare(value(sides[1], self), most) if most is not None else -1
-        except OpenError:
-            return False
-        return side > 0 or (side == 0 and relation in (ast.LtE, ast.GtE))
+        most = maximum(name, (self.called(name, arguments) or [0])[0], self)
+        with suppress(OpenError):
+            side = compare(value(sides[1], self), Fraction(most)) if most is not None else -1
+            return side > 0 or (side == 0 and relation in (ast.LtE, ast.GtE))
+        return False
 
-    def document(self, index: int, case_name: str):
+    def document(self, index: int, case_name: str) -> tuple[Json, dict[str, Real | None]]:
         """Return the certificate and the ratios of the claims."""
-        result: dict[str, Any] = {
-            "case": case_name,
-            "format": 1,
-            "index": index,
-            "parameters": self.parameters,
-            "definition": self.definition(),
-            "known": self.known(),
-            "claims": {},
-        }
-        if self.p:
-            self.primality[str(self.p)] = arithmetic.pratt(
-                self.p, self.hint("primality", str(self.p))
-            )
-        if self.case.tables:
-            result["tables"] = {
-                table["name"]: [self.cell(text) for text in table["columns"]]
-                for table in self.case.tables
-            }
+        result: Json = {"case": case_name, "format": 1, "index": index, "known": self.known()}
+        result |= {"parameters": self.parameters, "definition": self.definition(), "claims": {}}
         ratios = {}
         for claim in self.case.claims:
             result["claims"][claim["name"]], ratios[claim["name"]] = self.claim(claim)
-        if self.reason:
-            result["reason"] = self.reason
-        else:
-            for name in STRUCTURE if self.case.graph else ():
-                with suppress(OpenError, OutsideError):
-                    self.measure(name, [])
-            for tree in self.case.trees:
-                for node in subtrees(tree):
-                    name, arguments = named(node)
-                    if name in PREDICATES or name in quantities.GRAPH or name in quantities.OTHERS:
-                        with suppress(OpenError, OutsideError):
-                            self.measure(name, arguments)
-        shown = {
-            name: None
-            if isinstance(found, Exception)
-            else found
-            if isinstance(found, bool)
-            else str(found)
-            for name, found in self.measured.items()
-        }
-        result |= {"primality": self.primality, "quantities": shown, "witnesses": self.witnesses}
-        return result, ratios
+        for table in self.case.tables:
+            cells = [self.cell(text) for text in table["columns"]]
+            result.setdefault("tables", {})[table["name"]] = cells
+        for node in () if self.reason else (n for tree in self.case.trees for n in subtrees(tree)):
+            name, arguments = named(node)
+            with suppress(OpenError, OutsideError):
+                if name in QUANTITIES or name in PREDICATES:
+                    self.measure(name, arguments)
+        result |= {"primality": self.primality, "witnesses": self.witnesses}
+        result["quantities"] = {name: _shown(found) for name, found in self.measured.items()}
+        return result | ({"reason": self.reason} if self.reason else {}), ratios
 
 
-def table_text(case: Case, table: dict[str, Any], documents: list[dict[str, Any]]) -> str:
-    """Return the text of tables/NAME.csv."""
-    out = io.StringIO()
-    csv.writer(out, lineterminator="\n").writerows(
-        [table["columns"], *[document["tables"][table["name"]] for document in documents]]
-    )
-    return out.getvalue()
-
-
-def summary(
-    case: Case, name: str, documents: list[dict[str, Any]], ratios: list[dict[str, Real | None]]
-) -> dict[str, Any]:
-    """Return summary.json."""
-    fields = ("parameters", "known", "quantities", "witnesses", "claims", "reason")
-    instances = [
-        {key: document[key] for key in fields if key in document} for document in documents
-    ]
-    claims = [_claim(case, claim["name"], documents, ratios) for claim in case.claims]
-    tables = [_table(case, table, documents) for table in case.tables]
-    verdicts = [part["verdict"] for part in (*claims, *tables)]
-    verdict = min(verdicts, key=ORDER.index, default="holds")
-    return {
-        "format": 1,
-        "case": name,
-        "verdict": verdict,
-        "instances": instances,
-        "claims": claims,
-        "tables": tables,
-    }
-
-
-def _claim(case, name, documents, ratios):
-    entries = [document["claims"][name] for document in documents]
-    verdicts = [entry["verdict"] for entry in entries]
-    tightest, best = None, None
-    for document, ratio in zip(documents, ratios, strict=True):
-        if ratio[name] is not None and (best is None or _larger(ratio[name], best)):
-            best = ratio[name]
-            tightest = {"parameters": document["parameters"], "ratio": canonical(best)}
-    failing = [
-        document["parameters"]
-        for document, verdict in zip(documents, verdicts, strict=True)
-        if verdict == "fails"
-    ]
-    swept = next((key for key in ("p", "q") if key in case.parameters), None)
-    start = None
-    if swept:
-        at = [
-            (Fraction(document["parameters"][swept]), verdict)
-            for document, verdict in zip(documents, verdicts, strict=True)
-        ]
-        bad = max((p for p, verdict in at if verdict in ("fails", "open")), default=0)
-        good = [p for p, verdict in at if verdict == "holds" and p > bad]
-        start = str(min(good)) if good else None
-    failures = {
-        "count": len(failing),
-        "first": failing[0] if failing else None,
-        "last": failing[-1] if failing else None,
-        "holds_from": start,
-    }
-    counts = {verdict: verdicts.count(verdict) for verdict in ORDER}
-    return {
-        "name": name,
-        "verdict": min(verdicts, key=ORDER.index, default="outside"),
-        **counts,
-        "trivial": sum(entry["trivial"] for entry in entries),
-        "tightest": tightest,
-        "failures": failures,
-    }
-
-
-def _larger(x, y):
-    try:
-        return compare(x, y) > 0
-    except OpenError:
-        return False
-
-
-def _table(case, table, documents):
-    computed = [document["tables"][table["name"]] for document in documents]
-    printed = computed
-    if "expect" in table:
-        text = case.files["inputs/" + table["expect"]].decode()
-        printed = [row for row in csv.reader(io.StringIO(text)) if row][1:]
-    differences = []
-    for i in range(max(len(printed), len(computed))):
-        rows = [source[i] if i < len(source) else [] for source in (printed, computed)]
-        for j in range(max(map(len, rows))):
-            old, new = (row[j] if j < len(row) else None for row in rows)
-            if old != new:
-                differences.append({"row": i + 1, "column": j + 1, "printed": old, "computed": new})
-    openness = any(cell == "open" for row in computed for cell in row)
-    return {
-        "name": table["name"],
-        "verdict": "fails" if differences else "open" if openness else "holds",
-        "differences": differences,
-    }
+def _shown(found: Any) -> bool | str | None:
+    if isinstance(found, bool | Exception):
+        return None if isinstance(found, Exception) else found
+    return str(found)

@@ -206,7 +206,9 @@ class Matrix:
         """Return the graph as a networkx Graph."""
         import networkx as nx  # noqa: PLC0415 it costs 0.2 s, and few cases hand over a graph
 
-        return nx.from_numpy_array(self.entries)
+        made = nx.empty_graph(self.n)
+        made.add_edges_from(np.argwhere(np.triu(self.entries)).tolist())
+        return made
 
 
 def _sum_of_squares(numbers: NDArray[np.int64]) -> int:

@@ -7,6 +7,8 @@ from verifier.structures.graph import Circulant, Graph
 from verifier.structures.sequence import BinarySequence
 from verifier.structures.subject import Subject
 
+MATRIX = 3000
+
 
 def sequence_of(subject: Subject) -> BinarySequence:
     """Return the sequence of a subject."""
@@ -44,5 +46,8 @@ def circulant_of(subject: Subject) -> Circulant:
 
 
 def pair_cost(sizes: Sizes, *_: int) -> Cost:
-    """Return the cost of the statistics of all pairs, that of the dearer kind of graph."""
-    return Cost(sizes.n**2 // 2 + 20 * sizes.n, 40 * sizes.n + sizes.n**2 // 8)
+    """Return the cost of the statistics of all pairs; only circulants pass 3,000 vertices."""
+    n = sizes.n
+    if n > MATRIX:
+        return Cost(200 * n, 100 * n)
+    return Cost(n**3 // 128 + 20 * n, 2 * n**2)
