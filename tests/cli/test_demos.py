@@ -49,7 +49,7 @@ def test_an_older_folder_is_replaced_whole(cases, tmp_path):
     for name in ("paley", "surveyed-plan"):
         CliRunner().invoke(main, ["check", str(cases / f"{name}.toml"), "--out", str(out)])
     assert not (out / "tables").exists()
-    assert (out / "inputs" / "surveyed-plan.g6").exists()
+    assert (out / "inputs" / "surveyed-plan.s6").exists()
     assert [path.name for path in tmp_path.iterdir()] == ["out"]
 
 

@@ -8,6 +8,7 @@ import numpy as np
 import pytest
 from sympy import primerange
 
+from verifier import catalogue
 from verifier.errors import CaseError, UndefinedError
 from verifier.graphs.cayley_sum import cayley_sum
 from verifier.graphs.circulant import circulant
@@ -25,9 +26,11 @@ from verifier.quantities.degree_max import degree_max
 from verifier.quantities.degree_min import degree_min
 from verifier.quantities.density import density
 from verifier.quantities.edges import edges
+from verifier.records import Sizes
+from verifier.registry import QUANTITIES
 from verifier.rules.legendre import legendre
 from verifier.structures.character import Character
-from verifier.structures.graph import Matrix
+from verifier.structures.graph import Matrix, _sum_of_squares
 from verifier.structures.sequence import BinarySequence
 from verifier.structures.subject import Subject
 
@@ -259,6 +262,32 @@ def test_a_large_circulant_by_single_lags(p):
     assert sum(int(c) for c in codegrees.tolist()) == degree**2
     squares = p * sum(c * c for c in codegrees.tolist())
     assert closed_walks(subject, 4).value == squares
+
+
+@pytest.mark.parametrize("n", [1, 2, 3, 4, 5])
+def test_no_graph_exceeds_the_trivial_maxima(n):
+    """All graphs on n vertices; the complete one attains every maximum but the agreement sum's."""
+    catalogue.load()
+    sizes = Sizes(n, 0, 0)
+    arguments = {"closed_walks": (4,), "cycles": (4,)}
+    maxima = {
+        name: QUANTITIES.find(name).maximum(sizes, *arguments.get(name, ()))
+        for name in expected(nx.empty_graph(n))
+    }
+    pairs = [(i, j) for i in range(n) for j in range(i)]
+    for chosen in range(1 << len(pairs)):
+        graph = nx.empty_graph(n)
+        graph.add_edges_from(e for place, e in enumerate(pairs) if chosen >> place & 1)
+        for name, (value, _) in measured(of_networkx(graph)).items():
+            assert maxima[name] is None or value <= maxima[name]
+    for name, (value, _) in measured(of_networkx(nx.complete_graph(n))).items():
+        assert name == "agreement_sum" or maxima[name] in (None, value)
+    assert (maxima["codegree_sum"] is None) == (n < 4)
+
+
+def test_sums_of_large_squares():
+    numbers = np.array([2**31 - 1, 0, 12345, 2**31 - 1, 2**31 - 2] * 40, np.int64)
+    assert _sum_of_squares(numbers) == sum(int(x) ** 2 for x in numbers)
 
 
 def test_structure_of_matrices():

@@ -1,7 +1,7 @@
 """Every quantity against its definition, written out naively here."""
 
 from fractions import Fraction
-from itertools import combinations
+from itertools import combinations, product
 
 import numpy as np
 import pytest
@@ -20,7 +20,7 @@ from verifier.quantities.incomplete_sum import incomplete_sum
 from verifier.quantities.out_of_phase import out_of_phase
 from verifier.quantities.row_out_of_phase import row_out_of_phase
 from verifier.quantities.shifted_sum import shifted_sum
-from verifier.quantities.well_distribution import well_distribution
+from verifier.quantities.well_distribution import LONG, well_distribution
 from verifier.quantities.window_sum import window_sum
 from verifier.structures.character import Character
 from verifier.structures.graph import Circulant
@@ -110,6 +110,16 @@ def test_a_measure_of_a_sequence_is_its_definition(word):
     assert pair(row_out_of_phase(subject)) == naive_lag([-1, *word[1:]])
 
 
+@pytest.mark.parametrize("n", range(1, 9))
+def test_every_word_of_a_length(n):
+    for rest in product((1, -1), repeat=n - 1):
+        word = [1, *rest]
+        subject = of_sequence(word)
+        assert pair(well_distribution(subject)) == naive_well_distribution(word)
+        for order in (2, 3):
+            assert pair(correlation(subject, order)) == naive_correlation(word, order)
+
+
 @pytest.mark.parametrize("word", WORDS.values(), ids=WORDS)
 def test_a_compiled_kernel_is_the_definition_on_short_words(word):
     signs = np.array(word, np.int8)
@@ -155,6 +165,12 @@ def test_a_compiled_progression_is_the_plain_one():
     assert largest_progression(ramp, step_ranges) == (5000, (1, 0, 5000))
 
 
+def test_a_long_word_is_compiled_on_the_way():
+    signs = DRAWN.choice(np.array([1, -1], np.int8), LONG + 1)
+    found = well_distribution(of_sequence(signs.tolist()))
+    assert pair(found) == largest_progression(signs)
+
+
 def test_many_ties_cost_no_more():
     """A word of order 3 measure 1 is attained at every pair of lags."""
     alternating = [1, -1] * 500
@@ -180,6 +196,7 @@ def naive_values(p, polynomial):
 POLYNOMIALS = [
     (3, (1, 0)),
     (3, (2,)),
+    (3, (1, 0, 2, 0)),  # x^3 - x vanishes everywhere
     (5, (1, 0, 0, 0, 3)),
     (5, (1, 0, 0)),
     (7, (1, 0, 6, 0)),

@@ -148,6 +148,8 @@ def test_what_is_missing_is_said():
         shifted_sum(NOTHING, 2)
     with pytest.raises(UndefinedError):
         squarefree(NOTHING)
+    with pytest.raises(CaseError, match="known orders: 2"):
+        shifted_sum(NOTHING, 3)
     with pytest.raises(CaseError, match="known orders: 2, 3"):
         correlation(Subject(None, None, None, BinarySequence(np.ones(3, np.int8)), None), 4)
 

@@ -12,8 +12,9 @@ from verifier.kernels.autocorrelation import (
 )
 from verifier.kernels.correlation_plain import correlation_plain
 from verifier.kernels.correlation_three import correlation_three
-from verifier.kernels.correlation_two import correlation_two
+from verifier.kernels.correlation_two import correlation_two, lag_bounds
 from verifier.kernels.lag_ranges import least_window
+from verifier.kernels.packed import packed_from
 from verifier.kernels.pairs import matrix_pairs
 from verifier.kernels.pairs_tiled import matrix_pairs_tiled
 from verifier.kernels.progressions import largest_progression
@@ -110,6 +111,22 @@ def test_compiled_correlations_are_the_plain_ones(row, repeats):
         plain, every = correlation_plain(row, order)
         assert value == plain
         assert least_window(row, lags) == least_window(row, every)
+
+
+def test_bounds_of_lags_hold_where_sums_turn_inside_words():
+    """Words whose products at one lag fall inside a word and rise in the tail, or the reverse."""
+    for turn in (0, 16, 32, 63, 64):
+        for tail in (0, 1, 31, 33, 63):
+            for lag in (1, 5, 64, 70):
+                products = [-1] * turn + [1] * (64 - turn) + [-1, 1] * 32 + [1] * tail
+                row = [1] * lag
+                for x, sign in enumerate(products):
+                    row.append(row[x] * sign)
+                signs = np.array(row, np.int8)
+                words = [packed_from(signs, shift, len(row) // 64 + 2) for shift in range(64)]
+                bound = lag_bounds(words, lag % 64, len(row))[lag // 64]
+                sums = np.cumsum([0, *products])
+                assert bound >= int(sums.max() - sums.min())
 
 
 @given(rows([-1, 1], 300))

@@ -39,10 +39,8 @@ def correlation_two(signs: NDArray[np.int8]) -> tuple[int, list[tuple[int, ...]]
 
     best = max(value_at(lag) for lag in _promising(signs))
     attained: list[int] = []
-    for shift, shifted in enumerate(words):
-        full, tail = divmod(count - shift, 64)
-        high, low = _coarse(words[0], shifted, full)
-        bound = 2 * (high - low) + 2 * max(32, tail)
+    for shift in range(len(words)):
+        bound = lag_bounds(words, shift, count)
         for block in np.flatnonzero(bound >= best).tolist():
             lag = 64 * block + shift
             if not 0 < lag <= count - best or bound[block] < best:
@@ -53,6 +51,14 @@ def correlation_two(signs: NDArray[np.int8]) -> tuple[int, list[tuple[int, ...]]
             if value == best:
                 attained.append(lag)
     return best, [(lag,) for lag in sorted(attained)]
+
+
+def lag_bounds(words: list[NDArray[np.uint64]], shift: int, count: int) -> NDArray[np.int32]:
+    """Return what the window sums at the lags 64 q + shift do not exceed, q = 0, 1, ..."""
+    full, tail = divmod(count - shift, 64)
+    high, low = _coarse(words[0], words[shift], full)
+    bounds: NDArray[np.int32] = 2 * (high - low) + 2 * max(32, tail)
+    return bounds
 
 
 def _promising(signs: NDArray[np.int8]) -> list[int]:

@@ -196,7 +196,7 @@ ORDERS = {"correlation": (2, 3), "shifted_sum": (2,), "closed_walks": (4,), "cyc
 def maximum(name: str, order: int, s: Any) -> Any:
     """Return the trivial maximum of a quantity at an instance, None where there is none."""
     if name in GRAPH:
-        return GRAPH[name][1](s.graph.n)
+        return GRAPH[name][1](s.order)
     if name in CHARACTER:
         return s.p
     return max(0, s.length - order + 1) if name == "correlation" else s.length

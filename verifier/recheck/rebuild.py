@@ -49,10 +49,16 @@ class Row(Instance):
 
     def look_up(self, name: str, arguments: list[ast.expr]) -> Real:
         """Return the value of a name, of a function of f, or of a quantity."""
-        known = name in QUANTITIES
-        return (
-            Fraction(self.measure(name, arguments)) if known else super().look_up(name, arguments)
-        )
+        try:
+            measured = name in QUANTITIES
+            return (
+                Fraction(self.measure(name, arguments))
+                if measured
+                else super().look_up(name, arguments)
+            )
+        except OverBudgetError:  # of names, r alone takes steps
+            self.skipped += [name] if name not in self.skipped else []
+            return Fraction(int(self.hint("known", name)))
 
     def called(self, name: str, arguments: list[ast.expr]) -> list[int]:
         """Return the integer arguments of a quantity or predicate; none for f itself."""
@@ -80,17 +86,15 @@ class Row(Instance):
         return self.measured[full]
 
     def _measured(self, name: str, full: str, numbers: list[int]) -> tuple[Any, Any]:
-        said = self.hint("quantities", full)
-        with suppress(OverBudgetError):
-            try:
-                found = self._by_definition(name, numbers)
-            except (OpenError, OutsideError) as error:
-                return error, None
-            if said is not None or full not in (self.hint("quantities") or ()):
-                return found
-        self.skipped.append(full)
-        taken = said if isinstance(said, bool) else self.taken(said)
-        return taken, self.hint("witnesses", full)
+        try:
+            return self._by_definition(name, numbers)
+        except (OpenError, OutsideError) as error:
+            return error, None
+        except OverBudgetError:
+            self.skipped.append(full)
+            said = self.hint("quantities", full)
+            taken = said if isinstance(said, bool) else self.taken(said)
+            return taken, self.hint("witnesses", full)
 
     def taken(self, said: Any) -> Any:
         """Return the rational that the line says, without a check."""
