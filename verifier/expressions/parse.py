@@ -98,21 +98,27 @@ def check_exponents(tree: Tree, text: str) -> None:
 def check_size(tree: Tree, text: str) -> None:
     """Refuse a tree of more than 200 nodes or depth 40, as after expanding abbreviations.
 
+    A chain such as a + b + c + d is no deeper than its terms.
+
     Raises
     ------
     ExpressionError
         At the root: no single part is to blame.
     """
-    count, level = 0, [tree]
-    for depth in range(1, DEEPEST + 2):
-        count += len(level)
+    count = 0
+    waiting = [(tree, 1)]
+    while waiting:
+        node, depth = waiting.pop()
+        count += 1
         if count > MOST_NODES:
             _refuse(text, 0, f"more than {MOST_NODES} parts stand there, abbreviations expanded")
-        level = [part for node in level for part in children(node)]
-        if not level:
-            return
-        if depth == DEEPEST:
+        if depth > DEEPEST:
             _refuse(text, 0, f"a depth of more than {DEEPEST} stands there, abbreviations expanded")
+        chained = isinstance(node, And | Or) or (isinstance(node, Binary) and node.operator != "^")
+        waiting += [
+            (part, depth if chained and place == 0 else depth + 1)
+            for place, part in enumerate(children(node))
+        ]
 
 
 def _constant(tree: Tree) -> Fraction | None:

@@ -21,7 +21,7 @@ from .reals import OpenError, OutsideError, Real, RecheckError, canonical, compa
 
 OF_F = ("squarefree", "even", "odd", "irreducible")
 PREDICATES = (*OF_F, "prime", "regular", *STRUCTURE)
-LIMIT = "limit: "
+TAKEN = "as the line says"  # the reason of what was not measured
 Json = dict[str, Any]
 
 
@@ -99,7 +99,7 @@ class Row(Instance):
     def taken(self, said: Any) -> Any:
         """Return the rational that the line says, without a check."""
         exact = isinstance(said, str) and re.fullmatch(r"-?\d+(/\d+)?", said)
-        return Fraction(said) if exact else OpenError(LIMIT)
+        return Fraction(said) if exact else OpenError(TAKEN)
 
     def _by_definition(self, name: str, numbers: list[int]) -> tuple[Any, Any]:
         if self.reason:
@@ -114,12 +114,13 @@ class Row(Instance):
             if name in ("even", "odd"):
                 return not any(self.f[name == "even" :: 2]), None
             return getattr(arithmetic, name)(self.f, self.p), None
-        defects = self.graph.defects if name in (*GRAPH, *STRUCTURE, "regular") else {}
         if name in STRUCTURE:
-            return name not in defects, defects.get(name, [None])[0]
-        for predicate in STRUCTURE:
-            if predicate in defects:
-                raise OutsideError(defects[predicate][1])
+            witness, _ = self.graph.defects.get(name, (None, ""))
+            return witness is None, witness
+        for predicate in STRUCTURE if name in GRAPH or name == "regular" else ():
+            if not self.measure(predicate, []):
+                taken = predicate in self.skipped
+                raise OutsideError(TAKEN if taken else self.graph.defects[predicate][1])
         if name == "regular":
             degrees = self.graph.degrees
             other = next((j for j, d in enumerate(degrees) if d != degrees[0]), None)
@@ -194,8 +195,7 @@ class Row(Instance):
         )
         if single and shown:
             entry = {key: shown[0][key] for key in entry}
-        if reason == LIMIT and str(self.hint("claims", claim["name"], "reason")).startswith(LIMIT):
-            reason = self.hint("claims", claim["name"], "reason")
+        reason = self.hint("claims", claim["name"], "reason") if reason == TAKEN else reason
         entry |= {"reason": reason} if verdict in ("open", "outside") else {}
         met = {"holds": True, "fails": False}
         says = [{"says": text, "met": met.get(found[0])} for text, found in given.items()]
