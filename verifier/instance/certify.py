@@ -4,6 +4,7 @@ from typing import Any
 
 from verifier.case.case import Condition, Table
 from verifier.case.combinations import Combination
+from verifier.certificate import digest
 from verifier.errors import OutsideError
 from verifier.exact.canonical import canonical, rational_text
 from verifier.exact.nodes import Real
@@ -39,6 +40,7 @@ def certify(plan: Plan, combination: Combination, index: int) -> Certified:
     scope = InstanceScope(combination, built.subject)
     certificate: dict[str, Any] = {
         "case": plan.case.name,
+        "case-sha256": digest(plan.case.text),
         "format": 1,
         "index": index,
         "parameters": dict(combination.texts),

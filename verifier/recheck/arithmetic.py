@@ -48,7 +48,7 @@ def pratt(p: int, given: Any) -> list[list[Any]]:
 
 
 def bits(seed: int) -> Iterator[int]:
-    """Yield the bits of SHA-256 of `primewise:SEED:BLOCK` as a number, the least significant first."""
+    """Yield the bits of SHA-256 of `primewise:SEED:BLOCK`, a number, the lowest first."""
     for block in count():
         number = int(sha256(f"primewise:{seed}:{block}".encode("ascii")).hexdigest(), 16)
         yield from (number >> i & 1 for i in range(256))

@@ -2,19 +2,21 @@
 
 import ast
 import tomllib
-from collections.abc import Callable, Iterator, Mapping
+from collections.abc import Iterator, Mapping
+from hashlib import sha256
 from itertools import product
 from typing import Any
 
 from . import arithmetic
 from .arithmetic import is_prime
 from .expression import judge, named, parse, subtrees, value
-from .instance import Instance
+from .instance import Instance, OverBudgetError
+from .quantities import STRUCTURE
 from .reals import RecheckError, canonical, integer_root
 
-STRUCTURE = ("zero_one", "zero_diagonal", "symmetric")
 KEYS = {
-    "case": "format title about parameters define sequence graph measure claim table source notation",
+    "case": "format title about parameters define sequence graph measure claim table source"
+    " notation",
     "sweep": "primes prime-powers class values polynomials degree even monic squarefree every"
     " sample seed",
     "sequence": "rule polynomial at-zero indices symmetrise length seed values file",
@@ -34,46 +36,53 @@ def known(table: Any, what: str) -> dict[str, Any]:
 
 
 class Case:
-    """A case file, read; `files` holds the bytes of every file of the folder."""
+    """A case file, read; `files` holds the bytes of every file of the folder.
 
-    def __init__(self, files: Mapping[str, bytes], spend: Callable[[int], None]) -> None:
+    `steps` is the budget that remains: about one operation on one term or machine word each.
+    """
+
+    def __init__(self, files: Mapping[str, bytes], steps: int) -> None:
         data = known(tomllib.loads(files["case.toml"].decode(), parse_float=str), "case")
-        self.files, self.spend = files, spend
+        self.files, self.steps = files, steps
+        self.digest = sha256(files["case.toml"]).hexdigest()
         self.parameters = dict(data.get("parameters", {}))
         self.sequence = known(data.get("sequence", {}), "sequence")
         self.graph = known(data.get("graph", {}), "graph")
         self.claims = [known(claim, "claim") for claim in data.get("claim", [])]
         self.tables = [known(table, "table") for table in data.get("table", [])]
         self.definitions: dict[str, ast.expr] = {}
-        raw = {name: parse(text, {}) for name, text in data.get("define", {}).items()}
-        for name, text in data.get("define", {}).items():
-            self.definitions[name] = self.read(text)
+        self.parsed: dict[str, ast.expr] = {}
+        define = data.get("define", {})
+        for name, text in define.items():
+            self.definitions[name] = parse(text, self.definitions)
         self.where = [self.read(text) for text in self.parameters.pop("where", [])]
         texts = [*known(data.get("measure", {}), "measure").get("quantities", [])]
         for part in (*self.claims, *self.tables):
             texts += [*part.get("columns", [part.get("says")]), *part.get("given", [])]
-        texts += STRUCTURE if self.graph else ()
-        self.trees = [self.read(text) for text in texts]  # all of which the quantities are measured
+        self.trees = [self.read(text) for text in (*texts, *(STRUCTURE if self.graph else ()))]
         used = {named(node)[0] for text in texts for node in subtrees(parse(text, {}))}
-        for name in reversed(raw):
-            used |= {named(node)[0] for node in subtrees(raw[name])} if name in used else set()
-        self.used = [name for name in raw if name in used]
+        for name in reversed(define):
+            new = subtrees(parse(define[name], {})) if name in used else ()
+            used |= {named(node)[0] for node in new}
+        self.used = [name for name in define if name in used]
 
-    def belonging(self) -> set[str]:
-        """Return the paths of the tables and of the files that the case names."""
-        named_files = [
-            part[key]
-            for part in (self.sequence, self.graph, *self.tables)
-            for key in ("file", "expect")
-            if key in part
-        ]
-        return {f"inputs/{name}" for name in named_files} | {
-            f"tables/{t['name']}.csv" for t in self.tables
-        }
+    def spend(self, steps: int) -> None:
+        """Take so many steps from the budget, or refuse."""
+        if steps > self.steps:
+            raise OverBudgetError
+        self.steps -= steps
 
     def read(self, text: str) -> ast.expr:
         """Parse a text of the case, definitions replaced."""
-        return parse(text, self.definitions)
+        if text not in self.parsed:
+            self.parsed[text] = parse(text, self.definitions)
+        return self.parsed[text]
+
+    def belonging(self) -> set[str]:
+        """Return the paths of the tables and of the files that the case names."""
+        parts = (self.sequence, self.graph, *self.tables)
+        named_files = {f"inputs/{p[key]}" for p in parts for key in ("file", "expect") if key in p}
+        return named_files | {f"tables/{table['name']}.csv" for table in self.tables}
 
     def is_polynomial(self, name: str) -> bool:
         """Tell whether the parameter of this name is a polynomial."""

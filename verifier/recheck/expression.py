@@ -1,8 +1,8 @@
 """Expressions of a case: reading, canonical text, and their value or truth at one instance.
 
 The grammar binds as Python's own once ^ = mod are spelt ** == %. So the tokens are spelt so, names
-behind x_ and numbers behind n_, and Python's parser (never its evaluator) reads them; a tree with any
-node that is not of the grammar is refused.
+behind x_ and numbers behind n_, and Python's parser (never its evaluator) reads them; a tree with
+any node that is not of the grammar is refused.
 """
 
 import ast
@@ -19,7 +19,7 @@ from typing import Any
 from . import reals
 from .reals import ZERO, OpenError, OutsideError, Real, RecheckError, canonical, compare, operate
 
-MOST_CHARACTERS, MOST_NODES, MOST_DEPTH = 400, 200, 40
+MOST_CHARACTERS, MOST_NODES = 400, 200
 TOKEN = re.compile(r"\d+(?:\.\d+)?(?![\w.])|[A-Za-z]\w*|<=|>=|!=|[-+*/^()<>=,]", re.ASCII)
 SPELT = {"^": "**", "=": "==", "mod": "%", "and": "and", "or": "or", "not": "not"}
 GRAMMAR = (ast.Name, ast.Call, ast.BinOp, ast.UnaryOp, ast.Compare, ast.BoolOp)
@@ -53,7 +53,7 @@ def parse(text: str, definitions: Mapping[str, ast.expr]) -> ast.expr:
     tree: ast.expr = _Expand(definitions).visit(ast.parse(" ".join(spelt), mode="eval").body)
     nodes = list(subtrees(tree))
     known = all(isinstance(node, GRAMMAR) and len(getattr(node, "ops", "1")) == 1 for node in nodes)
-    if not known or len(nodes) > MOST_NODES or _depth(tree) > MOST_DEPTH:
+    if not known or len(nodes) > MOST_NODES:
         raise RecheckError(f"the expression {text[:60]!r} is not of the grammar or too large")
     return tree
 
@@ -69,11 +69,6 @@ def subtrees(tree: ast.AST) -> Iterator[ast.expr]:
         yield tree
     for part in tree.args if isinstance(tree, ast.Call) else ast.iter_child_nodes(tree):
         yield from subtrees(part)
-
-
-def _depth(tree: ast.AST) -> int:
-    below = max(map(_depth, ast.iter_child_nodes(tree)), default=0)
-    return below + isinstance(tree, ast.expr)
 
 
 def write(tree: ast.expr) -> str:

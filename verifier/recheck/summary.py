@@ -3,6 +3,7 @@
 import csv
 import io
 from fractions import Fraction
+from itertools import zip_longest
 from typing import Any
 
 from .case import Case
@@ -11,6 +12,7 @@ from .reals import OpenError, Real, canonical, compare
 ORDER = ("fails", "open", "holds", "outside")
 FIELDS = ("parameters", "known", "quantities", "witnesses", "claims", "reason")
 Json = dict[str, Any]
+Ratios = list[dict[str, Real | None]]
 
 
 def table_text(table: Json, documents: list[Json]) -> str:
@@ -21,45 +23,34 @@ def table_text(table: Json, documents: list[Json]) -> str:
     return out.getvalue()
 
 
-def summary(
-    case: Case, name: str, documents: list[Json], ratios: list[dict[str, Real | None]]
-) -> Json:
+def summary(case: Case, name: str, documents: list[Json], ratios: Ratios) -> Json:
     """Return summary.json."""
-    instances = [
-        {key: document[key] for key in FIELDS if key in document} for document in documents
-    ]
+    instances = [{key: found[key] for key in FIELDS if key in found} for found in documents]
     claims = [_claim(case, claim["name"], documents, ratios) for claim in case.claims]
     tables = [_table(case, table, documents) for table in case.tables]
     verdicts = [part["verdict"] for part in (*claims, *tables)]
-    verdict = min(verdicts, key=ORDER.index, default="holds")
-    result = {"format": 1, "case": name, "verdict": verdict, "instances": instances}
-    return result | {"claims": claims, "tables": tables}
+    result = {"format": 1, "case": name, "instances": instances, "claims": claims, "tables": tables}
+    return result | {"verdict": min(verdicts, key=ORDER.index, default="holds")}
 
 
-def _claim(
-    case: Case, name: str, documents: list[Json], ratios: list[dict[str, Real | None]]
-) -> Json:
-    judged = [(row["claims"][name]["verdict"], row["parameters"]) for row in documents]
-    verdicts = [verdict for verdict, _ in judged]
-    failing = [parameters for verdict, parameters in judged if verdict == "fails"]
-    best, tightest = None, None
+def _claim(case: Case, name: str, documents: list[Json], ratios: Ratios) -> Json:
+    entries = [document["claims"][name] for document in documents]
+    verdicts, best, tightest = [entry["verdict"] for entry in entries], None, None
     for document, of_claims in zip(documents, ratios, strict=True):
-        ratio = of_claims[name]
+        ratio, parameters = of_claims[name], document["parameters"]
         if ratio is not None and (best is None or _larger(ratio, best)):
-            best, tightest = (
-                ratio,
-                {"parameters": document["parameters"], "ratio": canonical(ratio)},
-            )
+            best, tightest = ratio, {"parameters": parameters, "ratio": canonical(ratio)}
     swept = next((key for key in ("p", "q") if key in case.parameters), "")
-    at = [(Fraction(parameters.get(swept, 0)), verdict) for verdict, parameters in judged]
+    rows = list(zip((document["parameters"] for document in documents), verdicts, strict=True))
+    failing = [parameters for parameters, verdict in rows if verdict == "fails"] or [None]
+    at = [(Fraction(parameters.get(swept, 0)), verdict) for parameters, verdict in rows]
     bad = max((p for p, verdict in at if verdict in ("fails", "open")), default=0)
-    good = [p for p, verdict in at if verdict == "holds" and p > bad]
-    failures = {"count": len(failing), "holds_from": str(min(good)) if good else None}
-    failures |= {"first": failing[0] if failing else None, "last": failing[-1] if failing else None}
+    good = min((p for p, verdict in at if verdict == "holds" and p > bad), default=None)
+    failures = {"count": verdicts.count("fails"), "holds_from": good and str(good)}
+    failures |= {"first": failing[0], "last": failing[-1]}
     result: Json = {verdict: verdicts.count(verdict) for verdict in ORDER}
     result |= {"name": name, "verdict": min(verdicts, key=ORDER.index), "failures": failures}
-    trivial = sum(document["claims"][name]["trivial"] for document in documents)
-    return result | {"trivial": trivial, "tightest": tightest}
+    return result | {"trivial": sum(entry["trivial"] for entry in entries), "tightest": tightest}
 
 
 def _larger(x: Real, y: Real) -> bool:
@@ -71,24 +62,14 @@ def _larger(x: Real, y: Real) -> bool:
 
 def _table(case: Case, table: Json, documents: list[Json]) -> Json:
     computed = [document["tables"][table["name"]] for document in documents]
-    printed = computed
+    printed, differences = computed, []
     if "expect" in table:
         text = case.files["inputs/" + table["expect"]].decode()
         printed = [row for row in csv.reader(io.StringIO(text)) if row][1:]
-    differences = []
-    for i in range(max(len(printed), len(computed))):
-        old, new = (
-            dict(enumerate(rows[i] if i < len(rows) else ())) for rows in (printed, computed)
-        )
-        for j in sorted(old.keys() | new.keys()):
-            if old.get(j) != new.get(j):
-                cell = {
-                    "row": i + 1,
-                    "column": j + 1,
-                    "printed": old.get(j),
-                    "computed": new.get(j),
-                }
-                differences.append(cell)
+    for i, rows in enumerate(zip_longest(printed, computed, fillvalue=()), 1):
+        for j, (old, new) in enumerate(zip_longest(*rows), 1):
+            if old != new:
+                differences.append({"row": i, "column": j, "printed": old, "computed": new})
     undecided = any("open" in row for row in computed)
     verdict = "fails" if differences else "open" if undecided else "holds"
     return {"name": table["name"], "verdict": verdict, "differences": differences}
