@@ -8,7 +8,7 @@ from typing import Any
 
 from verifier import catalogue
 from verifier.appendix.compile import compile_pdf
-from verifier.appendix.write import appendix_text, bibliography_text
+from verifier.appendix.write import documents
 from verifier.case.case import Case
 from verifier.case.combinations import combinations
 from verifier.case.read import build_case, read_case
@@ -107,7 +107,9 @@ def write_appendix(folder: Path, *, fragment: bool, pdf: bool, all_rows: bool) -
     (folder / DIGESTS).write_text(digests_text(listed), encoding="utf-8")
     yield folder / "appendix.tex"
     if fragment:
-        text = _appendix(case, certificates, summary, contents, all_rows=all_rows, fragment=True)
+        text, _ = _documents(
+            case, certificates, summary, contents, all_rows=all_rows, fragment=True
+        )
         (folder / "fragment.tex").write_text(text, encoding="utf-8")
         yield folder / "fragment.tex"
     if pdf:
@@ -177,23 +179,23 @@ def _contents(
         for table in case.tables
     }
     found |= rechecker_files()
-    found["references.bib"] = bibliography_text(case, summary, certificates).encode()
-    text = _appendix(case, certificates, summary, found, all_rows=all_rows, fragment=False)
-    found["appendix.tex"] = text.encode()
+    appendix, references = _documents(case, certificates, summary, found, all_rows=all_rows)
+    found |= {"appendix.tex": appendix.encode(), "references.bib": references.encode()}
     return found
 
 
-def _appendix(
+def _documents(
     case: Case,
     certificates: Sequence[Mapping[str, Any]],
     summary: Mapping[str, Any],
     contents: Mapping[str, bytes],
     *,
     all_rows: bool,
-    fragment: bool,
-) -> str:
-    digests = {name: digest(data) for name, data in contents.items() if name != "appendix.tex"}
-    return appendix_text(case, summary, certificates, digests, fragment=fragment, all_rows=all_rows)
+    fragment: bool = False,
+) -> tuple[str, str]:
+    own = ("appendix.tex", "references.bib")
+    digests = {name: digest(data) for name, data in contents.items() if name not in own}
+    return documents(case, summary, certificates, digests, fragment=fragment, all_rows=all_rows)
 
 
 def _read_results(folder: Path) -> tuple[Case, list[dict[str, Any]], dict[str, Any]]:

@@ -13,7 +13,7 @@ import pytest
 
 from verifier import catalogue
 from verifier.appendix.compile import compile_pdf
-from verifier.appendix.write import appendix_text, bibliography_text
+from verifier.appendix.write import appendix_text, documents
 from verifier.case.case import (
     Case,
     Claim,
@@ -384,7 +384,7 @@ def test_only_what_is_cited_is_listed(text):
     listed = re.findall(r"\\bibitem\{([^}]*)\}", text)
     assert set(listed) == cited
     assert len(listed) == len(set(listed))
-    bibliography = bibliography_text(CASE, SUMMARY, CERTIFICATES)
+    _, bibliography = documents(CASE, SUMMARY, CERTIFICATES, DIGESTS)
     assert bibliography.isascii()
     assert {entry.key for entry in read_bibtex(bibliography)} == cited
 

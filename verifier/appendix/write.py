@@ -50,7 +50,23 @@ def appendix_text(
     fragment: bool = False,
     all_rows: bool = False,
 ) -> str:
-    r"""Return the appendix as LaTeX source in ASCII, lines of at most 200 characters.
+    """Return the appendix alone; parameters and errors are those of `documents`."""
+    made = documents(case, summary, certificates, digests, fragment=fragment, all_rows=all_rows)
+    return made[0]
+
+
+def documents(
+    case: Case,
+    summary: Summary,
+    certificates: Sequence[Certificate],
+    digests: Mapping[str, str],
+    *,
+    fragment: bool = False,
+    all_rows: bool = False,
+) -> tuple[str, str]:
+    r"""Return the appendix and `references.bib`, the sources that it cites.
+
+    Both are ASCII; the LaTeX has lines of at most 200 characters.
 
     Parameters
     ----------
@@ -59,7 +75,7 @@ def appendix_text(
     summary, certificates
         What `summary.json` and the lines of `certificates.jsonl` hold.
     digests
-        File name to SHA-256 in hexadecimal, of the other files of the results folder.
+        File name to SHA-256 in hexadecimal, of the results folder's files but these two.
     fragment
         The form that is input in a host document after \appendix, instead of a document.
     all_rows
@@ -73,14 +89,8 @@ def appendix_text(
     printer = _Printer(case, summary, certificates, fragment=fragment)
     values = printer.values(digests, all_rows=all_rows)
     form = "fragment" if fragment else "appendix"
-    return folded(render(f"appendix/{form}.tex.jinja", **values).code)
-
-
-def bibliography_text(case: Case, summary: Summary, certificates: Sequence[Certificate]) -> str:
-    """Return `references.bib`: the sources that the appendix of the case cites, in ASCII."""
-    printer = _Printer(case, summary, certificates, fragment=False)
-    render("appendix/body.tex.jinja", **printer.values({}, all_rows=False))
-    return bib_text(printer.citations.cited())
+    text = folded(render(f"appendix/{form}.tex.jinja", **values).code)
+    return text, bib_text(printer.citations.cited())
 
 
 class _Printer:

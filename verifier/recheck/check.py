@@ -47,7 +47,7 @@ def _refuse(text: str) -> None:
 
 @contextmanager
 def at(place: str) -> Iterator[None]:
-    """Say where it was that something did not check; whatever a hostile folder provokes does not."""
+    """Say where something did not check; whatever a hostile folder provokes does not check."""
     try:
         yield
     except Exception as error:
