@@ -112,7 +112,6 @@ HOSTILE = [  # (file, bytes, words of the one line)
     ("case.toml", CASE.replace("agreement_sum", "peak_sidelobe").encode(), "does not know 'peak"),
     ("case.toml", CASE.replace("agreement_sum", "9^9^9^9").encode(), "10^6 bits"),
     ("case.toml", CASE.replace("agreement_sum", "(" * 150 + "p" + ")" * 150).encode(), "recheck: "),
-    ("case.toml", CASE.replace("agreement_sum", "-" * 60 + "p").encode(), "too large"),
     ("case.toml", CASE.replace("agreement_sum", "p" + "+p" * 150).encode(), "too large"),
     ("case.toml", CASE.replace("agreement_sum", "__import__('os')").encode(), "cannot be read"),
     ("case.toml", CASE.replace("p*(3", "p.real*(3").encode(), "cannot be read"),
@@ -145,6 +144,7 @@ def test_hostile_files_end_in_one_line(honest, tmp_path, capsys, name, content, 
 
 def seal(folder):
     files = {str(p.relative_to(folder)): p for p in folder.rglob("*") if p.is_file()}
+    files = {name: p for name, p in files.items() if "__pycache__" not in name}
     files.pop("digests.txt")
     digest = module.sha256
     lines = [f"{digest(files[n].read_bytes()).hexdigest()}  {n}\n" for n in sorted(files)]

@@ -15,10 +15,8 @@ from verifier.recheck.reals import OpenError, RecheckError, canonical, floor, ra
 class Scope:
     """n = 29, p = 13."""
 
-    names = {"n": Fraction(29), "p": Fraction(13)}
-
     def look_up(self, name, _arguments):
-        return self.names[name]
+        return {"n": Fraction(29), "p": Fraction(13)}[name]
 
 
 def evaluated(text):
@@ -94,7 +92,7 @@ def test_truth(text, verdict, reason):
     "text",
     ["", "2x", "1 2", "a < b < c", "a ** b", "a == b", "f(a,)", "(a, b)", "+3", "f(*a)", "sqrt(2",
      "1e3", ".5", "5.", "1_000", "0x10", "#", "a && b", "a[1]", "a.b", "lambda", "'x'", "a if b else c",
-     "a < b = c", "a = b in c", "()", "f()", "x := 3", "n²", "1; 2", "n" * 401, "-" * 50 + "n"],
+     "a < b = c", "a = b in c", "()", "f()", "x := 3", "n²", "1; 2", "n" * 401, "n" + "+n" * 150],
 )  # fmt: skip
 def test_refused(text):
     with pytest.raises((RecheckError, SyntaxError, KeyError, TypeError)):

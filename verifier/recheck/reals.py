@@ -131,9 +131,12 @@ def _steps(x: Real, down: Context, up: Context) -> Interval:
             else map(Decimal, (x.numerator, x.numerator, x.denominator))
         )
         return down.divide(a, c), up.divide(b, c)
-    if x.op == "root":
+    if x.op == "root" and x.y != 2:
         return _steps(Node("exp", Node("/", Node("log", x.x), x.y)), down, up)
     a, b = _steps(x.x, down, up)
+    if x.op == "root":  # rounded to nearest; what stands under a root is known to be >= 0
+        a = max(a, Decimal(0))
+        return down.next_minus(down.sqrt(a)), up.next_plus(up.sqrt(b))
     lower, upper = getattr(down, METHOD[x.op]), getattr(up, METHOD[x.op])
     if x.op in ("exp", "log"):  # rounded to nearest, as Python documents
         if x.op == "log" and a <= 0:
