@@ -9,13 +9,15 @@ from verifier.exact.nodes import Real
 
 DIGITS = 12
 
+Canonical = str | dict[str, str]
+
 
 def rational_text(x: Fraction | int) -> str:
     """Return `a/b` in lowest terms, or `a` for an integer."""
     return str(Fraction(x))
 
 
-def canonical(x: Real) -> str | dict[str, str]:
+def canonical(x: Real) -> Canonical:
     """Return a rational as text, and any other number as its floor and ceiling at 12 digits.
 
     Raises

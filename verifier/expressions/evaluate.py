@@ -1,7 +1,7 @@
 """Evaluate an expression exactly in the scope of an instance; judge a condition."""
 
 from collections.abc import Callable, Mapping, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from fractions import Fraction
 from math import comb, factorial
 from typing import Protocol
@@ -14,6 +14,7 @@ from verifier.errors import (
     UndefinedError,
 )
 from verifier.exact import reals
+from verifier.exact.canonical import Canonical, canonical
 from verifier.exact.decide import compare, rational_value, settled, sign, way
 from verifier.exact.nodes import Real
 from verifier.expressions.text import to_text
@@ -69,17 +70,19 @@ class Scope(Protocol):
 class Leaf:
     """A relation or predicate of a condition, judged.
 
-    `relation` tells which; the sides, `ratio` and `by` are None where there is no value.
+    `relation` tells which. The sides and `ratio` are canonical, None where there is no value;
+    `exact_ratio` is the ratio as an exact number.
     """
 
     says: str
     verdict: str
     relation: bool
-    left: Real | None = None
-    right: Real | None = None
-    ratio: Real | None = None
+    left: Canonical | None = None
+    right: Canonical | None = None
+    ratio: Canonical | None = None
     by: str | None = None
     reason: str | None = None
+    exact_ratio: Real | None = None
 
 
 @dataclass(frozen=True)
@@ -257,18 +260,21 @@ def _predicate(tree: Tree, scope: Scope) -> Leaf:
 
 def _relation(tree: Relation, scope: Scope) -> Leaf:
     says = to_text(tree)
-    left: Real | None = None
-    right: Real | None = None
     try:
         left = settled(value(tree.left, scope))
         right = settled(value(tree.right, scope))
-        verdict = "holds" if _true(tree.operator, compare(left, right)) else "fails"
+        shown = canonical(left), canonical(right)
     except OutsideError as problem:
         return Leaf(says, "outside", relation=True, reason=str(problem))
     except (UndefinedError, UndecidedError, LimitError) as problem:
-        return Leaf(says, "open", relation=True, left=left, right=right, reason=str(problem))
-    ratio = _ratio(tree.operator, left, right)
-    return Leaf(says, verdict, True, left, right, ratio, way(left, right))  # noqa: FBT003
+        return Leaf(says, "open", relation=True, reason=str(problem))
+    ratio, printed = _ratio(tree.operator, left, right)
+    leaf = Leaf(says, "open", True, *shown, printed, None, None, ratio)  # noqa: FBT003
+    try:
+        verdict = "holds" if _true(tree.operator, compare(left, right)) else "fails"
+    except UndecidedError as problem:
+        return replace(leaf, reason=str(problem))
+    return replace(leaf, verdict=verdict, by=way(left, right))
 
 
 def _true(operator: str, order: int) -> bool:
@@ -282,14 +288,16 @@ def _true(operator: str, order: int) -> bool:
     }[operator]
 
 
-def _ratio(operator: str, left: Real, right: Real) -> Real | None:
+def _ratio(operator: str, left: Real, right: Real) -> tuple[Real | None, Canonical | None]:
+    """Return the ratio of two positive sides, exact and printed, where it is settled."""
     if operator in ("=", "!="):
-        return None
+        return None, None
     if operator in (">=", ">"):
         left, right = right, left
     try:
         if sign(left) > 0 and sign(right) > 0:
-            return reals.divide(left, right)
+            ratio = reals.divide(left, right)
+            return ratio, canonical(ratio)
     except UndecidedError:
-        return None
-    return None
+        return None, None
+    return None, None

@@ -56,6 +56,7 @@ def build(case: Case, combination: Combination) -> Built:
         if combination.listed:
             raise CaseError(f"{_place(combination)}: {problem}") from problem
         definition = _conventions(case, combination, None)
+        _note_indices(case, combination, combination.p or 0, definition)
         return Built(Built.nothing(combination.p), definition, str(problem))
     character = None
     if polynomial is not None and combination.p is not None:
@@ -193,6 +194,15 @@ def _cut(
 ) -> BinarySequence:
     """Return the sequence on its indices, symmetrised where the case asks."""
     length = len(period.signs)
+    first, last = _note_indices(case, combination, length, definition)
+    found = period if (first, last) == (0, length - 1) else period.with_indices(first, last)
+    return found.mirrored() if case.sequence and case.sequence.symmetrise == "mirror" else found
+
+
+def _note_indices(
+    case: Case, combination: Combination, length: int, definition: dict[str, str]
+) -> tuple[int, int]:
+    """Return the first and the last index, a full period unless the case says otherwise."""
     first, last = 0, length - 1
     if case.sequence is not None and case.sequence.indices is not None:
         first, last = (
@@ -204,8 +214,7 @@ def _cut(
             f"{LONGEST_SEQUENCE} places was wanted"
         )
     definition["indices"] = f"{first}..{last}"
-    found = period if (first, last) == (0, length - 1) else period.with_indices(first, last)
-    return found.mirrored() if case.sequence and case.sequence.symmetrise == "mirror" else found
+    return first, last
 
 
 def _graph(case: Case, sequence: BinarySequence | None, definition: dict[str, str]) -> Any:  # noqa: ANN401 any of the graph structures

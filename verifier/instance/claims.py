@@ -4,8 +4,7 @@ from fractions import Fraction
 from typing import Any
 
 from verifier.case.case import Claim, Condition
-from verifier.errors import CaseError, UndecidedError, VerifierError
-from verifier.exact.canonical import canonical
+from verifier.errors import CaseError, VerifierError
 from verifier.exact.decide import compare
 from verifier.exact.nodes import Real
 from verifier.expressions.evaluate import Judged, Leaf, judge, value
@@ -41,16 +40,17 @@ def judge_claim(claim: Claim, scope: InstanceScope) -> tuple[dict[str, Any], Rea
     if judged.reason is not None:
         entry["reason"] = judged.reason
     if isinstance(claim.says.expanded, Relation):
-        entry |= _sides(judged.leaves[0])
-        ratio = judged.leaves[0].ratio if entry["ratio"] is not None else None
-        return entry, ratio
+        return entry | _sides(judged.leaves[0]), judged.leaves[0].exact_ratio
     entry["parts"] = [_part(leaf) for leaf in judged.leaves]
     return entry, None
 
 
 def outside_entry(claim: Claim, reason: str) -> dict[str, Any]:
     """Return the entry of a claim at an instance that is outside as a whole."""
-    return _without_values(claim, "outside", reason)
+    entry = _without_values(claim, "outside", reason)
+    if claim.given:
+        entry["given"] = [{"says": condition.text, "met": None} for condition in claim.given]
+    return entry
 
 
 def _met(condition: Condition, scope: InstanceScope) -> tuple[bool | None, Judged]:
@@ -82,21 +82,7 @@ def _without_values(claim: Claim, verdict: str, reason: str | None) -> dict[str,
 
 
 def _sides(leaf: Leaf) -> dict[str, Any]:
-    return {
-        "left": None if leaf.left is None else canonical(leaf.left),
-        "right": None if leaf.right is None else canonical(leaf.right),
-        "ratio": _canonical_ratio(leaf),
-        "by": leaf.by,
-    }
-
-
-def _canonical_ratio(leaf: Leaf) -> Any:  # noqa: ANN401 a text, an enclosure or None
-    if leaf.ratio is None:
-        return None
-    try:
-        return canonical(leaf.ratio)
-    except UndecidedError:
-        return None
+    return {"left": leaf.left, "right": leaf.right, "ratio": leaf.ratio, "by": leaf.by}
 
 
 def _part(leaf: Leaf) -> dict[str, Any]:
