@@ -35,7 +35,7 @@ def best_of(times, program, *arguments):
 
 
 def say(label, fast, slow):
-    print(f"\n{label}: {1000 * fast:.2f} ms, plain {1000 * slow:.2f} ms, ratio {slow / fast:.2f}")  # noqa: T201
+    print(f"\n{label}: {1000 * fast:.2f} ms, plain {1000 * slow:.2f} ms, ratio {slow / fast:.2f}")
 
 
 def signs(n):
@@ -158,4 +158,4 @@ def test_one_instance_against_one_autocorrelation(p):
     row = Character(p, QUARTIC).values
     _, whole = best_of(3, instance)
     _, one = best_of(3, periodic_autocorrelation, row)
-    print(f"\ninstance, p = {p}: {1000 * whole:.2f} ms, {whole / one:.2f} autocorrelations")  # noqa: T201
+    print(f"\ninstance, p = {p}: {1000 * whole:.2f} ms, {whole / one:.2f} autocorrelations")

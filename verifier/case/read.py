@@ -174,7 +174,7 @@ class _Reader:
         stripped = text.strip()
         try:
             tree = parse(stripped)
-            expanded = expand(tree, {name: made.tree for name, made in self.define.items()})
+            expanded = expand(tree, {name: made.expanded for name, made in self.define.items()})
             _CHECKS[kind](tree, self.names, stripped)
         except ExpressionError as problem:
             self.problems.add_expression(path, label, problem)
@@ -188,8 +188,7 @@ class _Reader:
             if refused is not None:
                 self.problems.add(path, f"[define] {name}: {refused}")
                 continue
-            made = self._condition(path, f"[define] {name}", text, "value")
-            self.define[name] = Condition(made.text, made.expanded, made.expanded)
+            self.define[name] = self._condition(path, f"[define] {name}", text, "value")
             self.names.defined.add(name)
 
     def _claim(self, i: int, claim: Any, raw: CaseFile) -> Claim:  # noqa: ANN401 a pydantic model

@@ -10,6 +10,7 @@ import operator
 import re
 from collections.abc import Iterator, Mapping
 from contextlib import suppress
+from copy import deepcopy
 from fractions import Fraction
 from functools import cmp_to_key
 from itertools import chain
@@ -34,7 +35,7 @@ class _Expand(ast.NodeTransformer):
         self.definitions = definitions
 
     def visit_Name(self, node: ast.Name) -> ast.expr:
-        return self.definitions.get(node.id[2:], node)
+        return deepcopy(self.definitions.get(node.id[2:], node))
 
 
 def parse(text: str, definitions: Mapping[str, ast.expr]) -> ast.expr:
