@@ -1,6 +1,7 @@
 """The pipeline: the only place that knows the order of the stages."""
 
 import json
+import re
 import tomllib
 from collections.abc import Iterator, Mapping, Sequence
 from pathlib import Path
@@ -87,7 +88,11 @@ def measure_one(rule: str, settings: Sequence[str], quantities: Sequence[str]) -
     """Measure one instance that the command line states, by way of a case of its own."""
     catalogue.load()
     text = _case_text(rule, settings, quantities)
-    case = build_case("command line", "measure", text.encode(), Path.cwd())
+    try:
+        case = build_case("command line", "measure", text.encode(), Path.cwd())
+    except CaseError as problem:  # the lines are those of a file that the user never saw
+        stated = (re.sub(r"^command line:\d+: ", "", line) for line in problem.problems)
+        raise CaseError(*stated) from problem
     made = combinations(case, lambda _: True)
     if len(made) != 1:
         raise CaseError(f"{len(made)} instances are stated; one was wanted")
@@ -101,7 +106,10 @@ def write_appendix(folder: Path, *, fragment: bool, pdf: bool, all_rows: bool) -
     """Write the appendix of a results folder anew; yield what was written."""
     catalogue.load()
     case, certificates, summary = _read_results(folder)
-    contents = _contents(case, certificates, summary, all_rows=all_rows)
+    try:
+        contents = _contents(case, certificates, summary, all_rows=all_rows)
+    except (KeyError, TypeError, ValueError, AttributeError) as problem:
+        raise CaseError(f"{folder}: its documents have another form than this tool's") from problem
     (folder / "appendix.tex").write_bytes(contents["appendix.tex"])
     listed = {name: data for name, data in contents.items() if name != DIGESTS}
     (folder / DIGESTS).write_text(digests_text(listed), encoding="utf-8")
@@ -206,8 +214,10 @@ def _read_results(folder: Path) -> tuple[Case, list[dict[str, Any]], dict[str, A
         certificates = [json.loads(line) for line in lines]
         summary = json.loads((folder / "summary.json").read_text(encoding="utf-8"))
         case = build_case(str(folder / "case.toml"), summary["case"], data, folder / "inputs")
+        if not certificates or len(certificates) != len(summary["instances"]):
+            raise CaseError(f"{folder}: its summary speaks of other instances than its certificates")
     except (OSError, ValueError, KeyError, TypeError) as problem:
-        raise CaseError(f"{folder}: is no results folder of this tool: {problem}") from problem
+        raise CaseError(f"{folder}: is no results folder of this tool") from problem
     return case, certificates, summary
 
 

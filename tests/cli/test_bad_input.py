@@ -217,3 +217,40 @@ def test_output_that_is_cut_off_is_no_error(tmp_path, cases):
     done = subprocess.run(command, stdout=writing, stderr=subprocess.PIPE, check=False)
     os.close(writing)
     assert (done.returncode, done.stderr) == (0, b"")
+
+
+@pytest.mark.parametrize("name", ["summary.json", "certificates.jsonl", "case.toml"])
+@pytest.mark.parametrize(
+    "text", ["[]", "{}", '{"case":1}', '{"claims":{}}', "null", '"x"', "\xff", ""]
+)
+def test_an_appendix_of_a_spoilt_folder_is_refused(tmp_path, name, text):
+    (tmp_path / "good.toml").write_text(GOOD)
+    out = tmp_path / "out"
+    CliRunner().invoke(main, ["check", str(tmp_path / "good.toml"), "--out", str(out)])
+    (out / name).write_text(text)
+    result = CliRunner().invoke(main, ["appendix", str(out)])
+    assert result.exit_code == 2, (result.output, result.exception)
+    assert len(result.stderr.splitlines()) <= 4
+
+
+@pytest.mark.parametrize(
+    ("arguments", "word"),
+    [
+        (["legendre", "p=9", "polynomial=x", "--quantity", "balance"], "a prime was wanted"),
+        (["legendre", "p=29", "--quantity", "balance"], "polynomial is missing"),
+        (["legendre", "p=29", "polynomial=x", "k", "--quantity", "balance"], "NAME=VALUE"),
+        (["legendre", "p=29", "polynomial=x", "p=31", "--quantity", "balance"], "twice"),
+        (["legendro", "p=29", "--quantity", "balance"], "nearest is legendre"),
+        (["legendre", "p=29", "polynomial=x", "--quantity", "balanse"], "nearest is balance"),
+        (
+            ["legendre", "p=29", "polynomial=x", "--quantity", "balance + 1"],
+            "quantity or predicate",
+        ),
+        (["legendre", "p=29", "polynomial=x", "--quantity", "edges"], "a graph"),
+        (["legendre", "p=29", "polynomial=29*x", "--quantity", "balance"], "vanishes"),
+    ],
+)
+def test_measure_refuses_what_has_no_meaning(arguments, word):
+    result = CliRunner().invoke(main, ["measure", *arguments])
+    assert (result.exit_code, word in result.stderr) == (2, True), result.output
+    assert "command line:" not in result.stderr

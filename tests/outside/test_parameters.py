@@ -14,7 +14,7 @@ from verifier.instance.conditions import kept
 
 catalogue.load()
 
-HEAD = 'format = 1\ntitle = "T"\n[measure]\nquantities = ["{measured}"]\n[parameters]\n'
+HEAD = 'format = 1\ntitle = "T"\n[[table]]\nname = "t"\ncolumns = ["{measured}"]\n[parameters]\n'
 
 
 def instances(tmp_path, parameters, rest="", measured="p"):

@@ -2,6 +2,7 @@
 
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, field
+from typing import NoReturn
 
 from verifier.case.case import Family, GraphTable, Parameter, Polynomials, SequenceTable
 from verifier.errors import ExpressionError
@@ -128,6 +129,18 @@ def check_measured(tree: Tree, names: Names, text: str) -> None:
         _condition(tree, names, text)
     else:
         _value(tree, names, text)
+
+
+def check_reported(tree: Tree, names: Names, text: str) -> None:
+    """Accept a quantity or a predicate, and nothing made of them."""
+    known = {*QUANTITIES.entries, *PREDICATES.entries}
+    if not isinstance(tree, Name | Call):
+        _refuse(tree, text, "a quantity or predicate was wanted")
+    if tree.name not in known:
+        _refuse(
+            tree, text, f"{tree.name!r} is no quantity or predicate; {nearest(tree.name, known)}"
+        )
+    check_measured(tree, names, text)
 
 
 def check_setting(tree: Tree, names: Names, text: str) -> None:
@@ -306,5 +319,5 @@ def _lacking(entry: Quantity | Predicate, names: Names) -> str | None:
     return None
 
 
-def _refuse(tree: Tree, text: str, problem: str) -> None:
+def _refuse(tree: Tree, text: str, problem: str) -> NoReturn:
     raise ExpressionError(text, tree.column, problem)

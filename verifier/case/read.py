@@ -8,7 +8,14 @@ from typing import Any
 from pydantic import ValidationError
 
 from verifier.case.case import Case, Claim, Condition, Source, Table
-from verifier.case.check import Names, check_condition, check_measured, check_value, check_where
+from verifier.case.check import (
+    Names,
+    check_condition,
+    check_measured,
+    check_reported,
+    check_value,
+    check_where,
+)
 from verifier.case.construction import read_graph, read_sequence
 from verifier.case.model import CaseFile
 from verifier.case.parameters import read_parameters
@@ -243,5 +250,5 @@ _CHECKS = {
     "condition": check_condition,
     "where": check_where,
     "column": check_measured,
-    "measured": check_measured,
+    "measured": check_reported,
 }
