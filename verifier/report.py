@@ -97,7 +97,8 @@ def _failures(
         yield f"  {emphasise(FAILING)} {claim['name']} fails {where}{tail}"
         yield from _witness(claim["name"], says, summary, "fails")
     if claim["open"]:
-        yield f"  {emphasise(OPEN)} {claim['name']} is open at {claim['open']} of the instances"
+        plural = "instance" if claim["open"] == 1 else "instances"
+        yield f"  {emphasise(OPEN)} {claim['name']} is open at {claim['open']} {plural}"
         yield from _witness(claim["name"], says, summary, "open")
 
 

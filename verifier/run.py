@@ -215,7 +215,7 @@ def _read_results(folder: Path) -> tuple[Case, list[dict[str, Any]], dict[str, A
         summary = json.loads((folder / "summary.json").read_text(encoding="utf-8"))
         case = build_case(str(folder / "case.toml"), summary["case"], data, folder / "inputs")
         if not certificates or len(certificates) != len(summary["instances"]):
-            raise CaseError(f"{folder}: its summary speaks of other instances than its certificates")
+            raise CaseError(f"{folder}: summary and certificates speak of other instances")
     except (OSError, ValueError, KeyError, TypeError) as problem:
         raise CaseError(f"{folder}: is no results folder of this tool") from problem
     return case, certificates, summary
