@@ -70,6 +70,19 @@ CASES = {
     "looped": '[graph]\nkind = "file"\nfile = "looped.edges"\n' + GRAPH_CLAIMS,
     "graph6": '[graph]\nkind = "file"\nfile = "petersen.g6"\n' + GRAPH_CLAIMS,
     "sparse6": '[graph]\nkind = "file"\nfile = "petersen.s6"\n' + GRAPH_CLAIMS,
+    "functions": '[parameters]\np = { primes = [3, 17] }\nf = { polynomials = ["x^3 + 2*x + 1", "3*x^5 - 1", "x^2/4 + x", "15*x + 2"] }\n' + LEGENDRE
+    + "".join(
+        f'[[claim]]\nname = "c{i}"\nsays = "{says}"\n'
+        for i, says in enumerate(
+            [
+                "disc(f) = 0", "chi(disc(f) + balance) != 1", "binomial(balance - 9, 2) > 0", "binomial(9, balance - 9) >= 0",
+                "factorial(balance - 5) < 10^9", "value(f, balance/2) < p", "chi(balance/3) = 0", "(balance mod (balance - 3)) = 0",
+                "sqrt(balance - 3) + log(balance - 5) < 100", "1/(complete_sum - 1) < 1 and balance > 0", "(complete_sum)^(1/3) < 2",
+                "0^(complete_sum) < 2", "round(balance/8, balance - 3) < 4", "window_sum(sqrt(p), p - log(p)) < 5", "prime(balance) or prime(2^5 - 1)",
+                "exp(balance/7) > 2^(balance/7) and floor(pi*balance) < 4*balance", "leading(f)*chi(2) <= p - 1", "max(complete_sum, -complete_sum, 1) <= p",
+            ]
+        )
+    ),
     "undecided": '[parameters]\np = { primes = [5, 13] }\n[define]\nL = "log(8)/log(2)"\nS = "sqrt(2)*sqrt(2)"\n' + '[sequence]\nrule = "legendre"\npolynomial = "x"\n'
     + '[[claim]]\nname = "a"\nsays = "L <= 3"\n[[claim]]\nname = "b"\nsays = "S < 2 or balance >= 0"\n[[claim]]\nname = "c"\nsays = "exp(log(N)) >= 2"\n'
     + '[[claim]]\nname = "d"\nsays = "1/(balance - 1) > 0"\n[[claim]]\nname = "e"\nsays = "balance < floor(L)"\ngiven = ["exp(log(5)) = 5"]\n[[claim]]\nname = "g"\nsays = "not L = 3 and balance != 0"\n',

@@ -212,7 +212,7 @@ def _factorial(number: int) -> Fraction:
 
 def _binomial(top: int, below: int) -> Fraction:
     if below < 0 or top < 0:
-        raise UndefinedError("undefined: binomial wants 0 <= k and 0 <= n")
+        raise UndefinedError(f"undefined: binomial wants 0 <= {'n' if top < 0 else 'k'}")
     if min(below, top - below) * max(top.bit_length(), 1) > 10**6:
         raise CaseError("a value of more than 10^6 bits")
     return Fraction(comb(top, below))

@@ -132,7 +132,7 @@ class InstanceScope:
         residues = self._polynomial("disc")
         degree = len(residues) - 1
         if degree < 1:
-            raise UndefinedError("undefined: disc of a constant")
+            raise UndefinedError("undefined: disc of a polynomial of degree 0")
         f = nmod_poly(list(residues)[::-1], p)
         sign = -1 if degree * (degree - 1) // 2 % 2 else 1
         derivative = f.derivative()
