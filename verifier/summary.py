@@ -6,6 +6,7 @@ from collections.abc import Mapping, Sequence
 from typing import Any
 
 from verifier.case.case import Case, Table
+from verifier.case.rows import read_rows
 
 WORST_FIRST = ("fails", "open", "holds", "outside")
 FROM_CERTIFICATE = ("parameters", "known", "quantities", "witnesses", "claims", "reason")
@@ -124,12 +125,6 @@ def _table_summary(case: Case, table: Table, certificates: Sequence[Certificate]
     unsettled = any(cell == "open" for row in computed for cell in row)
     verdict = "fails" if differences else "open" if unsettled else "holds"
     return {"name": table.name, "verdict": verdict, "differences": differences}
-
-
-def read_rows(data: bytes) -> list[list[str]]:
-    """Return the cells of a CSV below its header, white space around them dropped."""
-    rows = list(csv.reader(io.StringIO(data.decode("utf-8"), newline="")))
-    return [[cell.strip() for cell in row] for row in rows[1:] if row]
 
 
 def _differences(printed: list[list[str]], computed: list[list[str]]) -> list[dict[str, Any]]:

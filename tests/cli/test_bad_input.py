@@ -104,6 +104,32 @@ REPLACED = [  # what is replaced, by what, the line of the message, a word that 
     ("[graph]", '[define]\nA = "B"\nB = "1"\n[graph]', 9, "unknown"),
     ('title = "A case"', 'title = "\\u4e2d"', 2, "U+4E2D"),
     ("format = 1", "format = 1\nformat = 1", None, "TOML"),
+    (
+        "[[claim]]",
+        '[[table]]\nname = "t"\ncolumns = ["p"]\n[[table]]\nname = "t"\ncolumns = ["n"]\n[[claim]]',
+        14,
+        "above",
+    ),
+    ("[[claim]]", '[[claim]]\nname = "one"\nsays = "n > 0"\n[[claim]]', 14, "above"),
+    (
+        "[[claim]]",
+        '[[table]]\nname = "t"\ncolumns = ["p"]\nexpect = "../t.csv"\n[[claim]]',
+        13,
+        "leaves the folder",
+    ),
+    (
+        "[[claim]]",
+        '[[table]]\nname = "t"\ncolumns = ["p"]\nexpect = "none.csv"\n[[claim]]',
+        13,
+        "no file",
+    ),
+    (
+        "[[claim]]",
+        '[[table]]\nname = "t"\ncolumns = ["p"]\nheads = ["a", "b"]\n[[claim]]',
+        13,
+        "1 were wanted",
+    ),
+    ("[[claim]]", '[measure]\nquantities = ["p"]\n[[claim]]', 11, "quantity"),
     ("[[claim]]", '[[least]]\nname = "l"\nsays = "1 <= c"\n[[claim]]', 10, "not supported"),
 ]
 

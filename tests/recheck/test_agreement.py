@@ -83,11 +83,13 @@ CASES = {
             ]
         )
     ),
+    "expected": '[parameters]\np = { values = [5, 13] }\n[[table]]\nname = "t"\ncolumns = ["p", "round(p/3, 2)"]\nexpect = "expected.csv"\n',
     "undecided": '[parameters]\np = { primes = [5, 13] }\n[define]\nL = "log(8)/log(2)"\nS = "sqrt(2)*sqrt(2)"\n' + '[sequence]\nrule = "legendre"\npolynomial = "x"\n'
     + '[[claim]]\nname = "a"\nsays = "L <= 3"\n[[claim]]\nname = "b"\nsays = "S < 2 or balance >= 0"\n[[claim]]\nname = "c"\nsays = "exp(log(N)) >= 2"\n'
     + '[[claim]]\nname = "d"\nsays = "1/(balance - 1) > 0"\n[[claim]]\nname = "e"\nsays = "balance < floor(L)"\ngiven = ["exp(log(5)) = 5"]\n[[claim]]\nname = "g"\nsays = "not L = 3 and balance != 0"\n',
 }  # fmt: skip
 FILES = {
+    "expected.csv": "a,b\r\n\r\n5,1.67\r\n13, 4.33\r\n7,8,9\r\n",
     "bits.txt": "0110 1001, 1001\n0110",
     "small.matrix": "0110\n1010\n1100\n0000\n",
     "unsymmetric.matrix": "0 1 0\n0 0 1\n1, 0, 0\n",

@@ -20,11 +20,13 @@ from verifier.case.construction import read_graph, read_sequence
 from verifier.case.model import CaseFile
 from verifier.case.parameters import read_parameters
 from verifier.case.problems import Problems
+from verifier.case.rows import rows_problem
 from verifier.case.section import Section
 from verifier.case.shapes import shape_problems
 from verifier.errors import CaseError, ExpressionError
 from verifier.expressions.names import expand
 from verifier.expressions.parse import parse
+from verifier.expressions.text import to_text
 from verifier.typography.bibtex import check_bibtex
 from verifier.typography.escape import unprintable
 from verifier.typography.maths import check_head, check_maths
@@ -128,12 +130,12 @@ class _Reader:
         )
         self._define(raw.define)
         claims = tuple(self._claim(i, claim, raw) for i, claim in enumerate(raw.claim))
-        tables = tuple(self._table(i, table) for i, table in enumerate(raw.table))
+        tables = tuple(self._table(i, table, raw) for i, table in enumerate(raw.table))
         measure = tuple(
             self._condition(["measure", "quantities", i], "[measure] quantities", text, "measured")
             for i, text in enumerate(raw.measure.quantities if raw.measure else [])
         )
-        self._notation(raw.notation)
+        notation = self._notation(raw.notation)
         self.problems.stop_if_any()
         return Case(
             name=name,
@@ -148,7 +150,7 @@ class _Reader:
             claims=claims,
             tables=tables,
             sources={key: Source(key, s.text, s.bibtex) for key, s in raw.source.items()},
-            notation=dict(raw.notation),
+            notation=notation,
             text=data,
             inputs=self.section.inputs,
         )
@@ -215,8 +217,10 @@ class _Reader:
         )
         return Claim(claim.name, says, given, claim.source)
 
-    def _table(self, i: int, table: Any) -> Table:  # noqa: ANN401 a pydantic model
+    def _table(self, i: int, table: Any, raw: CaseFile) -> Table:  # noqa: ANN401 a pydantic model
         label = f"table {table.name}"
+        if any(other.name == table.name for other in raw.table[:i]):
+            self.problems.add(["table", i, "name"], f"{label}: a table of this name stands above")
         columns = tuple(
             self._condition(["table", i, "columns", j], f"{label}: column", text, "column")
             for j, text in enumerate(table.columns)
@@ -231,18 +235,25 @@ class _Reader:
             if bad is not None:
                 self.problems.add(["table", i, "heads", j], f"{label}: heads: {bad}")
         if table.expect is not None:
-            self.section.read_input(["table", i, "expect"], f"{label}: expect", table.expect)
+            path: list[str | int] = ["table", i, "expect"]
+            self.section.read_input(path, f"{label}: expect", table.expect)
+            bad = rows_problem(self.section.inputs.get(table.expect, b""))
+            if bad is not None:
+                self.problems.add(path, f"{label}: expect: {table.expect!r} {bad}")
         return Table(table.name, columns, tuple(table.heads), table.expect)
 
-    def _notation(self, raw: Mapping[str, str]) -> None:
+    def _notation(self, raw: Mapping[str, str]) -> dict[str, str]:
+        """Return the notation by canonical names."""
+        found: dict[str, str] = {}
         for name, text in raw.items():
             bad = check_maths(text)
             if bad is not None:
                 self.problems.add(["notation", name], f"[notation] {name}: {bad}")
             try:
-                parse(name)
+                found[to_text(parse(name))] = text
             except ExpressionError as problem:
                 self.problems.add_expression(["notation", name], "[notation]", problem)
+        return found
 
 
 _CHECKS = {
