@@ -205,7 +205,7 @@ def vocabulary(kinds: str | None) -> None:
 
     Example: primewise vocabulary quantities
     """
-    from verifier.run import vocabulary_lines
+    from verifier.vocabulary import vocabulary_lines
 
     for line in vocabulary_lines(kinds):
         click.echo(line)

@@ -12,6 +12,7 @@ from verifier.certificate import digest
 from verifier.errors import CaseError
 
 DIGESTS = "digests.txt"
+APPENDIX = "appendix.tex"
 
 
 def check_target(folder: Path) -> None:
@@ -69,6 +70,34 @@ def write_results(folder: Path, contents: Mapping[str, bytes]) -> None:
 def digests_text(contents: Mapping[str, bytes]) -> str:
     """Return the digests in the form that `sha256sum -c` reads, by path."""
     return "".join(f"{digest(contents[name])}  {name}\n" for name in sorted(contents))
+
+
+def check_digests(folder: Path) -> None:
+    """Refuse a results folder in which a file is missing or has changed since it was written.
+
+    The appendix may have been edited: it is about to be written anew.
+
+    Raises
+    ------
+    CaseError
+        Naming the first such file.
+    """
+    for line in (folder / DIGESTS).read_text(encoding="utf-8").splitlines():
+        stated, _, name = line.partition("  ")
+        path = folder / name
+        if name == APPENDIX:
+            continue
+        if not path.is_file() or digest(path.read_bytes()) != stated:
+            raise CaseError(f"{path}: is not the file whose digest stands in {DIGESTS}")
+
+
+def replace_file(folder: Path, name: str, data: bytes) -> None:
+    """Write one file of a results folder anew, and its line in the digests."""
+    (folder / name).write_bytes(data)
+    lines = (folder / DIGESTS).read_text(encoding="utf-8").splitlines()
+    changed = f"{digest(data)}  {name}"
+    kept = [changed if line.endswith(f"  {name}") else line for line in lines]
+    (folder / DIGESTS).write_text("".join(f"{line}\n" for line in kept), encoding="utf-8")
 
 
 def rechecker_files() -> dict[str, bytes]:

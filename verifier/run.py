@@ -2,7 +2,6 @@
 
 import json
 import re
-import tomllib
 from collections.abc import Iterator, Mapping, Sequence
 from pathlib import Path
 from typing import Any
@@ -20,14 +19,15 @@ from verifier.instance.conditions import kept, refuse_before_building
 from verifier.plan import Plan, make_plan
 from verifier.pool import certify_all
 from verifier.progress import Progress
-from verifier.registry import GRAPHS, PREDICATES, QUANTITIES, RULES
+from verifier.registry import PREDICATES, QUANTITIES
 from verifier.results import (
-    DIGESTS,
+    check_digests,
     check_target,
-    digests_text,
     rechecker_files,
+    replace_file,
     write_results,
 )
+from verifier.statement import case_text
 from verifier.summary import summarise, table_text
 
 
@@ -87,7 +87,7 @@ def check_case(case: Case, folder: Path, jobs: int, progress: Progress) -> dict[
 def measure_one(rule: str, settings: Sequence[str], quantities: Sequence[str]) -> dict[str, Any]:
     """Measure one instance that the command line states, by way of a case of its own."""
     catalogue.load()
-    text = _case_text(rule, settings, quantities)
+    text = case_text(rule, settings, quantities)
     try:
         case = build_case("command line", "measure", text.encode(), Path.cwd())
     except CaseError as problem:  # the lines are those of a file that the user never saw
@@ -106,13 +106,12 @@ def write_appendix(folder: Path, *, fragment: bool, pdf: bool, all_rows: bool) -
     """Write the appendix of a results folder anew; yield what was written."""
     catalogue.load()
     case, certificates, summary = _read_results(folder)
+    check_digests(folder)
     try:
         contents = _contents(case, certificates, summary, all_rows=all_rows)
     except (KeyError, TypeError, ValueError, AttributeError) as problem:
         raise CaseError(f"{folder}: its documents have another form than this tool's") from problem
-    (folder / "appendix.tex").write_bytes(contents["appendix.tex"])
-    listed = {name: data for name, data in contents.items() if name != DIGESTS}
-    (folder / DIGESTS).write_text(digests_text(listed), encoding="utf-8")
+    replace_file(folder, "appendix.tex", contents["appendix.tex"])
     yield folder / "appendix.tex"
     if fragment:
         text, _ = _documents(
@@ -123,43 +122,6 @@ def write_appendix(folder: Path, *, fragment: bool, pdf: bool, all_rows: bool) -
     if pdf:
         compile_pdf(folder, "appendix")
         yield folder / "appendix.pdf"
-
-
-def vocabulary_lines(kinds: str | None) -> Iterator[str]:
-    """Yield the vocabulary as lines: names, definitions, sources."""
-    catalogue.load()
-    registries: dict[str, Mapping[str, Any]] = {
-        "rules": RULES.entries,
-        "graphs": GRAPHS.entries,
-        "quantities": QUANTITIES.entries,
-        "predicates": PREDICATES.entries,
-    }
-    for title, entries in registries.items():
-        if kinds not in (None, title):
-            continue
-        yield f"{title}:"
-        for name in sorted(entries):
-            entry = entries[name]
-            yield f"  {name}{_signature(entry)}"
-            yield f"      {entry.definition}"
-            if entry.source:
-                yield f"      source: {entry.source}"
-
-
-def _signature(entry: Any) -> str:  # noqa: ANN401 an entry of any kind
-    keys = getattr(entry, "keys", None)
-    if keys:
-        return "  " + ", ".join(
-            f"{name}" if key.default is None else f"{name} = {key.default}"
-            for name, key in keys.items()
-        )
-    arguments = getattr(entry, "arguments", ())
-    shown = {"order": "l", "place": "x", "integer": "a", "polynomial": "f"}
-    if not arguments:
-        return ""
-    letters = "A, B" if arguments == ("place", "place") else ", ".join(shown[a] for a in arguments)
-    orders = getattr(entry, "orders", ())
-    return f"({letters})" + (f"  l = {', '.join(map(str, orders))}" if orders else "")
 
 
 def _plan(case: Case) -> Plan:
@@ -219,52 +181,3 @@ def _read_results(folder: Path) -> tuple[Case, list[dict[str, Any]], dict[str, A
     except (OSError, ValueError, KeyError, TypeError) as problem:
         raise CaseError(f"{folder}: is no results folder of this tool") from problem
     return case, certificates, summary
-
-
-def _case_text(rule: str, settings: Sequence[str], quantities: Sequence[str]) -> str:
-    """Return the case file that a `measure` command states."""
-    sequence: dict[str, str] = {"rule": json.dumps(rule)}
-    parameters: dict[str, str] = {}
-    graph: dict[str, str] = {}
-    for setting in settings:
-        name, equals, given = setting.partition("=")
-        if not equals or not name:
-            raise CaseError(f"{setting!r} stands there; NAME=VALUE was wanted")
-        target = sequence
-        if name == "kind":
-            target = graph
-        elif name not in _sequence_keys(rule):
-            target = parameters
-        if name in target:
-            raise CaseError(f"{name} is given twice")
-        target[name] = _toml_value(given) if target is not parameters else _parameter(name, given)
-    lines = ["format = 1", 'title = "One instance"', "[parameters]", *_lines(parameters)]
-    lines += ["[sequence]", *_lines(sequence)]
-    if graph:
-        lines += ["[graph]", *_lines(graph)]
-    lines += ["[measure]", f"quantities = {json.dumps(list(quantities))}"]
-    return "\n".join(lines) + "\n"
-
-
-def _sequence_keys(rule: str) -> set[str]:
-    entry = RULES.find(rule)
-    return {*entry.keys, "indices", "symmetrise"}
-
-
-def _lines(table: Mapping[str, str]) -> list[str]:
-    return [f"{json.dumps(name)} = {text}" for name, text in table.items()]
-
-
-def _parameter(name: str, given: str) -> str:
-    if name == "f":
-        return f"{{ polynomials = [{json.dumps(given)}] }}"
-    return f"{{ values = [{_toml_value(given)}] }}"
-
-
-def _toml_value(given: str) -> str:
-    """Return an integer as it stands, anything else as a text."""
-    try:
-        parsed = tomllib.loads(f"x = {given}")["x"]
-    except tomllib.TOMLDecodeError:
-        return json.dumps(given)
-    return given if type(parsed) is int else json.dumps(given)

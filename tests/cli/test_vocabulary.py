@@ -30,7 +30,7 @@ def test_everything_is_listed_with_its_definition():
 def test_one_kind_alone(kind):
     run = CliRunner().invoke(main, ["vocabulary", kind])
     heads = [line for line in run.stdout.splitlines() if not line.startswith(" ")]
-    assert heads == [f"{kind}:"]
+    assert heads == [f"{kind}:", "sources:"]
 
 
 def test_measure_shows_witnesses_and_what_has_no_value():
@@ -44,3 +44,19 @@ def test_measure_shows_witnesses_and_what_has_no_value():
         "edges has no value here\n"
         "correlation(2) = 3  attained at (2, 3, 3)\n"
     )
+
+
+def test_an_appendix_does_not_seal_what_was_changed(results, tmp_path):
+    """Digests are checked before the appendix is written anew, and no other line is touched."""
+    import shutil
+
+    folder = tmp_path / "paley"
+    shutil.copytree(results / "paley", folder)
+    before = (folder / "digests.txt").read_text()
+    assert CliRunner().invoke(main, ["appendix", str(folder)]).exit_code == 0
+    assert (folder / "digests.txt").read_text() == before
+    table = folder / "tables" / "parameters.csv"
+    table.write_text(table.read_text().replace("5,2,0,1", "5,2,1,1"))
+    run = CliRunner().invoke(main, ["appendix", str(folder)])
+    assert (run.exit_code, "parameters.csv" in run.stderr) == (2, True)
+    assert (folder / "digests.txt").read_text() == before

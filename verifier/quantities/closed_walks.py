@@ -11,7 +11,7 @@ from verifier.structures.subject import Subject
 
 @quantity(
     "closed_walks",
-    definition="trace of A^t",
+    definition="trace of A^l",
     source="BrouwerHaemers2012",
     needs="graph",
     symbol=r"\operatorname{tr}A^{{0}}",

@@ -12,7 +12,7 @@ from verifier.structures.subject import Subject
 
 @quantity(
     "cycles",
-    definition="number of labelled t-cycles (injective maps of the cycle C_t)",
+    definition="number of labelled cycles of length l (injective maps of the cycle C_l)",
     source="ChungGrahamWilson1989",
     needs="graph",
     symbol=r"N_G(C_{{0}})",
