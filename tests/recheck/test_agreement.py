@@ -83,6 +83,7 @@ CASES = {
             ]
         )
     ),
+    "prime-powers": '[parameters]\nq = { prime-powers = [4, 30], class = [1, 4] }\n[sequence]\nrule = "random"\nlength = "q"\nseed = "p"\n' + SEQUENCE_CLAIMS + '[[table]]\nname = "t"\ncolumns = ["q", "p", "chi(2)"]\n',
     "expected": '[parameters]\np = { values = [5, 13] }\n[[table]]\nname = "t"\ncolumns = ["p", "round(p/3, 2)"]\nexpect = "expected.csv"\n',
     "undecided": '[parameters]\np = { primes = [5, 13] }\n[define]\nL = "log(8)/log(2)"\nS = "sqrt(2)*sqrt(2)"\n' + '[sequence]\nrule = "legendre"\npolynomial = "x"\n'
     + '[[claim]]\nname = "a"\nsays = "L <= 3"\n[[claim]]\nname = "b"\nsays = "S < 2 or balance >= 0"\n[[claim]]\nname = "c"\nsays = "exp(log(N)) >= 2"\n'

@@ -10,6 +10,7 @@ from collections.abc import Sequence
 from fractions import Fraction
 from functools import cached_property
 from itertools import islice
+from math import isqrt
 from typing import Any
 
 from . import arithmetic
@@ -49,6 +50,10 @@ class Instance:
         self.primality: dict[str, Any] = {}
         numbers = [name for name in parameters if not case.is_polynomial(name)]
         self.names = {name: Fraction(parameters[name]) for name in numbers}
+        if "q" in self.names:  # p is the characteristic: the least factor of a prime power
+            q = self.integer("q")
+            least = next((d for d in range(2, isqrt(q) + 1) if q % d == 0), q)
+            self.names.setdefault("p", Fraction(least))
         if "p" in self.names:
             self.p = self.integer("p")
             self.names.setdefault("q", self.names["p"])

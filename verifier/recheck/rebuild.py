@@ -46,7 +46,8 @@ def known(s: Instance) -> Json:
     """Return what a certificate says is known."""
     names = ["n"] * bool(s.case.graph) + ["N"] * bool(s.rule)
     names += ["k", "r"] * ("polynomial" in s.rule) + s.case.used
-    found: Json = {name: str(s.names[name]) for name in ("p", "q") if name in s.case.parameters}
+    swept = ("p",) * ("p" in s.names) + ("q",) * ("q" in s.case.parameters)
+    found: Json = {name: str(s.names[name]) for name in swept}
     for name in () if s.reason else names:
         found[name] = None
         with suppress(OpenError, OutsideError):
