@@ -29,9 +29,9 @@ def check_target(folder: Path) -> None:
         raise CaseError(
             f"{folder}: holds other files than results of this tool; choose another --out"
         )
+    above = next(parent for parent in folder.absolute().parents if parent.exists())
     try:
-        folder.parent.mkdir(parents=True, exist_ok=True)
-        with tempfile.TemporaryDirectory(prefix=".probe-", dir=folder.parent):
+        with tempfile.TemporaryDirectory(prefix=".probe-", dir=above):
             pass
     except OSError as problem:
         raise CaseError(f"{folder}: cannot be written: {_words(problem)}") from problem
@@ -55,6 +55,7 @@ def write_results(folder: Path, contents: Mapping[str, bytes]) -> None:
     complete = {**contents, DIGESTS: digests_text(contents).encode()}
     staged: Path | None = None
     try:
+        folder.parent.mkdir(parents=True, exist_ok=True)
         staged = Path(tempfile.mkdtemp(prefix=f".{folder.name}-", dir=folder.parent))
         for name, data in complete.items():
             _write(staged / name, data)

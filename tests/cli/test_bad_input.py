@@ -214,6 +214,13 @@ def test_targets_that_are_not_ours(tmp_path, kind):
     assert kept.read_text() == "mine"
 
 
+def test_a_refused_case_leaves_no_folder_behind(tmp_path, monkeypatch):
+    monkeypatch.chdir(tmp_path)
+    (tmp_path / "bad.toml").write_text(says("agreement_sum <= n/(p - 5)"))
+    assert CliRunner().invoke(main, ["check", "bad.toml"]).exit_code == 2
+    assert [entry.name for entry in tmp_path.iterdir()] == ["bad.toml"]
+
+
 def test_a_full_disk_leaves_nothing_half_written(tmp_path, monkeypatch):
     """A disk that fills up is played by a write that raises ENOSPC at the third file."""
     import verifier.results as results
